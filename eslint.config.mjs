@@ -16,5 +16,7 @@ export default defineConfig(
       'no-console': 'error',
     },
   },
-  { files: ['scripts/**'], languageOptions: { globals: { process: 'readonly', console: 'readonly' } } },
+  { files: ['test/**'], rules: { 'no-console': 'off' } },
+  { files: ['test/editor/inPage.js'], languageOptions: { globals: { document: 'readonly', NodeFilter: 'readonly' } } },
+  { files: ['scripts/**'], rules: { 'no-console': 'off' }, languageOptions: { globals: { process: 'readonly', console: 'readonly' } } },
 );

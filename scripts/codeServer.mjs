@@ -69,4 +69,11 @@ function link(target, path) {
   symlinkSync(target, path);
 }
 
-if (process.argv[1] === import.meta.filename) installCodeServer();
+if (process.argv[1] === import.meta.filename) {
+  try {
+    installCodeServer();
+  } catch (error) {
+    console.error(error.message);
+    process.exitCode = 1;
+  }
+}

@@ -3,7 +3,11 @@ import { spawnSync } from 'node:child_process';
 import { accessSync, constants, existsSync } from 'node:fs';
 import { delimiter, join } from 'node:path';
 
-/** Where the program `name` stands, or null. */
+/**
+ * Where the program `name` stands, or null.
+ * @param {string} name
+ * @returns {string | null}
+ */
 export function onPath(name) {
   for (const folder of (process.env.PATH ?? '').split(delimiter)) {
     const path = join(folder, name);
@@ -17,14 +21,21 @@ export function onPath(name) {
   return null;
 }
 
-const program = name => ({ package: name, isThere: () => onPath(name) !== null });
+/** @typedef {{ package: string, isThere: () => boolean }} Package */
+
+/** @type {(name: string, command?: string) => Package} */
+const program = (name, command = name) => ({ package: name, isThere: () => onPath(command) !== null });
+/** @type {(name: string, path: string) => Package} */
 const file = (name, path) => ({ package: name, isThere: () => existsSync(path) });
 
-/** What the tests in a real editor need: a browser, a font for the screenshots, and what code-server is built with. */
+/**
+ * What the tests in a real editor need: a browser, a font for the screenshots, and what code-server is built with.
+ * @type {Package[]}
+ */
 export const editorPackages = [
   program('chromium'),
   file('fonts-dejavu-core', '/usr/share/fonts/truetype/dejavu/DejaVuSans.ttf'),
-  { package: 'ripgrep', isThere: () => onPath('rg') !== null },
+  program('ripgrep', 'rg'),
   program('python3'),
   program('make'),
   program('g++'),
