@@ -1,0 +1,134 @@
+import { gaussLegendre } from '../quadrature/gauss-legendre';
+import type { MatrixElement } from './matrix-element';
+import type { MomentumGrid, Panel } from './momentum-grid';
+
+/**
+ * A kernel between the nodes of a grid: applying it to values of a smooth function h at the nodes gives Σ_j V[i][j] weight_j h_j ≈ ∫V(k_i, k) h(k) dk.
+ * Where the kernel is narrower than the panels (both momenta large at fixed difference) V[i][j] is not V(k_i, k_j) but what integrates
+ * V(k_i, k) times the panel's interpolating polynomial exactly.
+ */
+export interface KernelOnGrid {
+  readonly size: number;
+  /** V[row * size + column]. */
+  readonly re: Float64Array;
+  /** Null for a real kernel. */
+  readonly im: Float64Array | null;
+}
+
+/** `scale`: the momentum over which the kernel changes when both momenta are large; Infinity: it is smooth on every panel. */
+export function kernelOnGrid(element: MatrixElement, grid: MomentumGrid, scale: number, E: number): KernelOnGrid {
+  const rows = kernelRows(element, grid, grid.nodes, scale, E);
+  return { size: grid.nodes.length, re: rows.re, im: element.real ? null : rows.im };
+}
+
+/** The rows of `KernelOnGrid` for any momenta p: re[row * nodes + column]. */
+export function kernelRows(element: MatrixElement, grid: MomentumGrid, p: Float64Array, scale: number, E: number): { re: Float64Array; im: Float64Array } {
+  const n = grid.nodes.length;
+  const re = new Float64Array(p.length * n);
+  const im = new Float64Array(p.length * n);
+  const left = new Float64Array(n);
+  for (let i = 0; i < p.length; i++) {
+    left.fill(p[i]);
+    element.fill(left, grid.nodes, E, re.subarray(i * n, (i + 1) * n), im.subarray(i * n, (i + 1) * n));
+    if (scale < Infinity) correctRow(element, grid, p[i], scale, E, re.subarray(i * n, (i + 1) * n), im.subarray(i * n, (i + 1) * n));
+  }
+  return { re, im };
+}
+
+/** V(k_j, k) at the nodes for one k: a column, without any correction. */
+export function kernelColumn(element: MatrixElement, p: Float64Array, k: number, E: number): { re: Float64Array; im: Float64Array } {
+  const re = new Float64Array(p.length);
+  const im = new Float64Array(p.length);
+  element.fill(p, new Float64Array(p.length).fill(k), E, re, im);
+  return { re, im };
+}
+
+/** Points on a panel refined towards where the kernel is sharp, in panel coordinates (-1..1), and how the panel's nodes feed them. */
+interface SubRule {
+  readonly x: Float64Array;
+  readonly weights: Float64Array;
+  /** share[point * nodes + node]: the Lagrange polynomial of the node at the point. */
+  readonly share: Float64Array;
+}
+
+const POINTS = 10;
+const DEEPEST = 32;
+
+function correctRow(element: MatrixElement, grid: MomentumGrid, p: number, scale: number, E: number, re: Float64Array, im: Float64Array): void {
+  for (const panel of grid.panels) {
+    const half = (panel.to - panel.from) / 2;
+    const middle = (panel.to + panel.from) / 2;
+    const t = (p - middle) / half;
+    if (Math.abs(t) > 3 || 2 * half <= scale) continue;
+    const rule = subRule(panel.count, t, Math.max(2 ** -DEEPEST, scale / half));
+    const k = rule.x.map(x => middle + half * x);
+    const v = { re: new Float64Array(k.length), im: new Float64Array(k.length) };
+    element.fill(new Float64Array(k.length).fill(p), k, E, v.re, v.im);
+    collect(rule, v.re, panel, grid.weights, half, re);
+    if (!element.real) collect(rule, v.im, panel, grid.weights, half, im);
+  }
+}
+
+function collect(rule: SubRule, v: Float64Array, panel: Panel, weights: Float64Array, half: number, row: Float64Array): void {
+  const m = panel.count;
+  const sum = new Float64Array(m);
+  for (let s = 0; s < v.length; s++) {
+    const f = v[s] * rule.weights[s];
+    for (let j = 0; j < m; j++) sum[j] += f * rule.share[s * m + j];
+  }
+  for (let j = 0; j < m; j++) row[panel.start + j] = (sum[j] * half) / weights[panel.start + j];
+}
+
+const rules = new Map<string, SubRule>();
+
+/** Intervals that start with `smallest` at t (or at the end next to it) and double away from it. */
+function subRule(nodes: number, t: number, smallest: number): SubRule {
+  const finest = 2 ** Math.floor(Math.log2(Math.min(1, smallest)));
+  const key = `${nodes}/${t.toFixed(9)}/${finest}`;
+  const known = rules.get(key);
+  if (known) return known;
+  const breaks = new Set<number>([-1, 1]);
+  const at = Math.min(1, Math.max(-1, t));
+  breaks.add(at);
+  const first = Math.max(finest, Math.abs(t - at));
+  for (const side of [-1, 1]) for (let step = first; at + side * step > -1 && at + side * step < 1; step *= 2) breaks.add(at + side * step);
+  const ordered = [...breaks].sort((x, y) => x - y);
+  const gauss = gaussLegendre(POINTS);
+  const count = (ordered.length - 1) * POINTS;
+  const x = new Float64Array(count);
+  const weights = new Float64Array(count);
+  for (let j = 0; j + 1 < ordered.length; j++) {
+    const half = (ordered[j + 1] - ordered[j]) / 2;
+    for (let g = 0; g < POINTS; g++) {
+      x[j * POINTS + g] = (ordered[j + 1] + ordered[j]) / 2 + half * gauss.nodes[g];
+      weights[j * POINTS + g] = half * gauss.weights[g];
+    }
+  }
+  const rule = { x, weights, share: lagrange(gaussLegendre(nodes).nodes, x) };
+  if (rules.size > 4000) rules.clear();
+  rules.set(key, rule);
+  return rule;
+}
+
+/** Values at x of the Lagrange polynomials of the nodes, by the barycentric formula. */
+function lagrange(nodes: Float64Array, x: Float64Array): Float64Array {
+  const m = nodes.length;
+  const barycentric = nodes.map((node, j) => {
+    let product = 1;
+    for (let i = 0; i < m; i++) if (i !== j) product *= (node - nodes[i]) * 2;
+    return 1 / product;
+  });
+  const share = new Float64Array(x.length * m);
+  for (let s = 0; s < x.length; s++) {
+    let sum = 0;
+    let hit = -1;
+    for (let j = 0; j < m; j++) {
+      const d = x[s] - nodes[j];
+      if (Math.abs(d) < 1e-15) hit = j;
+      share[s * m + j] = barycentric[j] / d;
+      sum += share[s * m + j];
+    }
+    for (let j = 0; j < m; j++) share[s * m + j] = hit >= 0 ? (j === hit ? 1 : 0) : share[s * m + j] / sum;
+  }
+  return share;
+}

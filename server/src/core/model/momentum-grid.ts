@@ -1,0 +1,79 @@
+import { gaussLegendreOn } from '../quadrature/gauss-legendre';
+import type { Kinematics } from './kinematics';
+import type { Regulator } from './regulator';
+
+/** A run of nodes that carry one polynomial: Gauss-Legendre on [from, to]. */
+export interface Panel {
+  readonly from: number;
+  readonly to: number;
+  readonly start: number;
+  readonly count: number;
+}
+
+/** Loop momenta at one cutoff. In dimension 1 with the full wave they run over both signs. */
+export interface MomentumGrid {
+  readonly cutoff: number;
+  /** Lower and upper end: (-K or 0, K), K the cutoff or where a smooth one has died out. */
+  readonly low: number;
+  readonly high: number;
+  readonly nodes: Float64Array;
+  /** Plain quadrature weights dk. */
+  readonly weights: Float64Array;
+  /** norm * dk * |k|^(D-1) * f(k/L)²: a loop integral is Σ measure * G * (…). */
+  readonly measure: Float64Array;
+  readonly energies: Float64Array;
+  readonly panels: readonly Panel[];
+}
+
+export interface GridWishes {
+  /** The smallest momentum that matters: panels below it are as wide as it. */
+  readonly smallest: number;
+  /** Up to this momentum (the largest external one) panels are no wider than `kernelScale`. */
+  readonly external: number;
+  /** Momentum over which a local kernel changes; Infinity where there is none. Below a sharp edge panels narrow to it. */
+  readonly kernelScale: number;
+  readonly pointsPerPanel: number;
+  /** Power of momentum with which integrands grow, for the reach of a smooth cutoff. */
+  readonly growth: number;
+}
+
+export function momentumGrid(kinematics: Kinematics, regulator: Regulator, cutoff: number, wishes: GridWishes): MomentumGrid {
+  const high = cutoff * regulator.reach(wishes.growth);
+  const breaks = breakpoints(high, regulator.shape.kind === 'sharp', wishes);
+  const all = kinematics.signed ? [...breaks.slice(1).map(b => -b).reverse(), ...breaks] : breaks;
+  return gridOn(kinematics, regulator, cutoff, all, wishes.pointsPerPanel);
+}
+
+/** The grid with these panels, `points` nodes in each. */
+export function gridOn(kinematics: Kinematics, regulator: Regulator, cutoff: number, breaks: readonly number[], points: number): MomentumGrid {
+  const count = (breaks.length - 1) * points;
+  const nodes = new Float64Array(count);
+  const weights = new Float64Array(count);
+  const panels: Panel[] = [];
+  for (let j = 0; j + 1 < breaks.length; j++) {
+    const rule = gaussLegendreOn(points, breaks[j], breaks[j + 1]);
+    nodes.set(rule.nodes, j * points);
+    weights.set(rule.weights, j * points);
+    panels.push({ from: breaks[j], to: breaks[j + 1], start: j * points, count: points });
+  }
+  const power = kinematics.dimension - 1;
+  const measure = nodes.map((k, j) => kinematics.norm * weights[j] * Math.abs(k) ** power * regulator.leg(k / cutoff) ** 2);
+  return { cutoff, low: breaks[0], high: breaks[breaks.length - 1], nodes, weights, measure, energies: kinematics.energies(nodes), panels };
+}
+
+/** 0, s, 2s, 4s, … , high; halved further where external momenta or a sharp edge ask for it. */
+function breakpoints(high: number, sharp: boolean, { smallest, external, kernelScale }: GridWishes): number[] {
+  const doublings = Math.min(60, Math.max(2, Math.ceil(Math.log2(high / Math.min(smallest, kernelScale)))));
+  const breaks = [0];
+  for (let j = doublings; j >= 0; j--) breaks.push(high / 2 ** j);
+  const refined = breaks.slice(0, 1);
+  for (let j = 1; j < breaks.length; j++) {
+    const [from, to] = [breaks[j - 1], breaks[j]];
+    const pieces = from < external && to - from > kernelScale ? 2 ** Math.min(6, Math.ceil(Math.log2((to - from) / kernelScale))) : 1;
+    for (let i = 1; i <= pieces; i++) refined.push(from + ((to - from) * i) / pieces);
+  }
+  if (sharp && Number.isFinite(kernelScale)) {
+    for (let width = (high - refined[refined.length - 2]) / 2; width > kernelScale / 2; width /= 2) refined.splice(-1, 0, high - width);
+  }
+  return refined;
+}
