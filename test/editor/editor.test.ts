@@ -34,10 +34,8 @@ describe.skipIf(obstacle)('in a real editor', () => {
     await workbench.squiggles.first().waitFor({ timeout: 60_000 });
     await workbench.screenshot('1-squiggle');
 
-    const hover = await workbench.hover('twist');
-    const plot = hover.locator('img').first();
-    await plot.waitFor();
-    expect(await plot.evaluate(shownWidth)).toBeGreaterThan(100);
+    const hover = await workbench.hover('twist', 'img');
+    await expect.poll(() => hover.locator('img').first().evaluate(shownWidth)).toBeGreaterThan(100);
     await workbench.screenshot('2-hover');
 
     await hover.getByRole('link', { name: 'uv-divergence' }).click();

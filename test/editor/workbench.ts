@@ -34,25 +34,29 @@ export class Workbench {
     return this.page.locator('.squiggly-error');
   }
 
-  /** What a person sees when the pointer rests on `word`. */
-  async hover(word: string): Promise<Locator> {
-    const { x, y } = await this.placeOf(word);
-    await this.page.mouse.move(x + 200, y + 300);
-    await this.page.mouse.move(x - 2, y);
-    await this.page.mouse.move(x, y);
+  /** What a person sees when the pointer rests on `word`, once it holds a `part` (numbers follow the first verdicts). */
+  async hover(word: string, part: string): Promise<Locator> {
     const hover = this.page.locator('.monaco-hover:visible').filter({ hasText: word }).first();
-    await hover.waitFor();
+    await this.persist(async () => {
+      const { x, y } = await this.placeOf(word);
+      await this.page.mouse.move(x + 200, y + 300);
+      await this.page.mouse.move(x - 2, y);
+      await this.page.mouse.move(x, y);
+      await hover.locator(part).first().waitFor({ timeout: 3000 });
+    });
     return hover;
   }
 
   /** Opens the menu of quick fixes at `word`. Returns its entries. */
   async openQuickFixes(word: string): Promise<string[]> {
-    await this.page.keyboard.press('Escape');
-    const { x, y } = await this.placeOf(word);
-    await this.page.mouse.click(x, y);
-    await this.page.keyboard.press('Control+.');
-    const rows = this.page.locator('.action-widget .monaco-list-row');
-    await rows.first().waitFor();
+    const rows = this.page.locator('.action-widget .monaco-list-row.action');
+    await this.persist(async () => {
+      await this.page.keyboard.press('Escape');
+      const { x, y } = await this.placeOf(word);
+      await this.page.mouse.click(x, y);
+      await this.page.keyboard.press('Control+.');
+      await rows.first().waitFor({ timeout: 3000 });
+    });
     return rows.allInnerTexts();
   }
 
@@ -66,7 +70,7 @@ export class Workbench {
       await this.page.keyboard.press('ArrowDown');
     }
     await this.page.keyboard.press('Enter');
-    await this.page.locator('.action-widget').waitFor({ state: 'detached' });
+    await this.page.locator('.action-widget').waitFor({ state: 'hidden' });
   }
 
   async save(): Promise<void> {
@@ -79,6 +83,18 @@ export class Workbench {
     await this.page.screenshot({ path: join(output, `${name}.png`) });
   }
 
+  /** Does what a person does when a menu doesn't open: tries again. */
+  private async persist(attempt: () => Promise<void>): Promise<void> {
+    for (let tries = 1; ; tries++) {
+      try {
+        return await attempt();
+      } catch (error) {
+        if (tries === 6) throw error;
+      }
+    }
+  }
+
+  /** The middle of the first occurrence of `word`, in pixels. Waits until it is on the screen. */
   private async placeOf(word: string): Promise<{ x: number; y: number }> {
     const place = await this.page.waitForFunction(placeOfWord, word);
     return (await place.jsonValue())!;
