@@ -11,7 +11,7 @@ export const expectation: FindingRule = {
     if (result.holds !== false) return [];
     const about = model.spec.expectations[index];
     const upTo = about?.kind === 'finite' ? about.to ?? model.spec.series.order : 0;
-    const growing = about?.kind === 'finite' ? divergences(model).filter(({ open, term }) => open && term.order <= upTo) : [];
+    const growing = about?.kind === 'finite' ? divergences(model).filter(({ open, kind, term }) => open && kind !== 'nested' && term.order <= upTo) : [];
     return [{
       severity: 'error',
       message: growing.length > 0 ? notFinite(result.text, growing.map(({ term }) => term.monomial)) : `\`expect ${result.text}\` does not hold${measured(result)}.`,

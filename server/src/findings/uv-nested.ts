@@ -11,10 +11,10 @@ export const uvNested: FindingRule = {
     const { monomial, ultraviolet, exponents } = found.term;
     const growth = growthFormula(ultraviolet, model.spec.cutoff.name);
     const through = listed(ultraviolet.nestedIn, 4) || 'a part of it';
-    const then = found.open ? `once ${ultraviolet.nestedIn.length > 1 ? 'they are' : 'that is'} cancelled, it needs no counterterm of its own` : `which ${ultraviolet.nestedIn.length > 1 ? 'are' : 'is'} cancelled`;
+    const then = found.open ? `; once ${ultraviolet.nestedIn.length > 1 ? 'they are' : 'that is'} cancelled, it needs no counterterm of its own` : `, which ${ultraviolet.nestedIn.length > 1 ? 'are' : 'is'} cancelled`;
     return {
       severity: 'information' as const,
-      message: `${monomial} diverges${growth ? `, as ${growth},` : ''} only through ${through}; ${then}.`,
+      message: `${monomial} diverges${growth ? `, as ${growth},` : ''} only through ${through}${then}.`,
       span: placeOfMonomial(model, exponents),
       subject: monomial,
       related: inside(model, found),

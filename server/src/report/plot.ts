@@ -39,7 +39,7 @@ export function plotSvg(plot: Plot): string {
   const values = plot.curves.flatMap(({ y }) => y.filter(Number.isFinite));
   if (new Set(usable).size < 2 || values.length === 0) return '';
   const x = scaleLog([Math.min(...usable), Math.max(...usable)], [frame.left, frame.right]);
-  const y = scaleLinear(padded(values), [frame.bottom, frame.top]).nice(5);
+  const y = scaleLinear(padded(values), [frame.bottom, frame.top]);
   return [
     `<svg xmlns="http://www.w3.org/2000/svg" width="${size.width}" height="${size.height}" viewBox="0 0 ${size.width} ${size.height}" role="img" aria-labelledby="t d" font-family="system-ui, -apple-system, 'Segoe UI', sans-serif" font-size="11" fill="${ink}">`,
     `<title id="t">${escaped(plot.title)}</title><desc id="d">${escaped(plot.description)}</desc>`,
