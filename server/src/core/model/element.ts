@@ -1,0 +1,9 @@
+import type { KernelShape } from './kernel-shape';
+
+/** One summand of a matrix element: adds itself to what is there. */
+export interface Element {
+  add(p: Float64Array, k: Float64Array, E: number, re: Float64Array, im: Float64Array): void;
+  readonly real: boolean;
+  readonly relativeError: number;
+  readonly shape: KernelShape;
+}
