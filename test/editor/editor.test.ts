@@ -39,7 +39,7 @@ describe.skipIf(obstacle)('in a real editor', () => {
     await workbench.screenshot('2-hover');
 
     await hover.getByRole('link', { name: 'uv-divergence' }).click();
-    await workbench.page.locator('.tab', { hasText: 'Preview findings.md' }).waitFor();
+    await workbench.webview.getByRole('heading', { name: 'uv-divergence' }).waitFor();
     await workbench.screenshot('3-what-it-means');
     await workbench.page.locator('.tab', { hasText: 'wire.tare' }).click();
 

@@ -1,6 +1,6 @@
 import { mkdirSync } from 'node:fs';
 import { join } from 'node:path';
-import { type Browser, type Locator, type Page, chromium as playwright } from 'playwright-core';
+import { type Browser, type FrameLocator, type Locator, type Page, chromium as playwright } from 'playwright-core';
 import { placeOfWord } from './inPage.js';
 import { chromium, output } from './machine';
 
@@ -32,6 +32,11 @@ export class Workbench {
 
   get squiggles(): Locator {
     return this.page.locator('.squiggly-error');
+  }
+
+  /** The page that the editor shows in a frame within a frame: a rendered document. */
+  get webview(): FrameLocator {
+    return this.page.frameLocator('iframe.webview.ready').frameLocator('#active-frame');
   }
 
   /** What a person sees when the pointer rests on `word`, once it holds a `part` (numbers follow the first verdicts). */

@@ -10,6 +10,7 @@ import {
   TextDocuments,
 } from 'vscode-languageserver/node';
 import { TextDocument } from 'vscode-languageserver-textdocument';
+import { version } from '../../../package.json';
 import { fixesAt } from '../features/fixes';
 import { hoverAt } from '../features/hover';
 import { findingsOf } from '../findings';
@@ -65,7 +66,7 @@ export function serve(connection: Connection, places: ServerPlaces): void {
     client.showsProgress = capabilities.window?.workDoneProgress === true;
     if (initializationOptions?.settings !== undefined) configure(initializationOptions.settings);
     return {
-      serverInfo: { name: 'tare' },
+      serverInfo: { name: 'tare', version },
       capabilities: {
         positionEncoding: PositionEncodingKind.UTF16,
         textDocumentSync: TextDocumentSyncKind.Incremental,

@@ -32,10 +32,6 @@ export class Evaluator {
     private readonly patience = patienceAfterCancel,
   ) {}
 
-  get isBusy(): boolean {
-    return this.running !== null;
-  }
-
   /** Evaluates `spec`; needs the evaluator to be idle. The promise is never rejected. */
   evaluate(spec: ModelSpec, budget: number, progress: (done: number, what: string) => void): Promise<Outcome> {
     if (this.running) throw new Error('The evaluator takes one model at a time.');

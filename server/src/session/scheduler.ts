@@ -42,7 +42,7 @@ export class Scheduler {
   private evaluating: SpecKey | null = null;
 
   constructor(
-    private readonly evaluator: Evaluator,
+    private readonly evaluator: Pick<Evaluator, 'evaluate' | 'cancel' | 'dispose'>,
     private readonly events: SessionEvents,
   ) {}
 

@@ -12,7 +12,7 @@ export interface Settings {
 export const standardSettings: Settings = { defaults: standardDefaults, keystrokeBudget: 2e8 };
 
 /** Above this order the number of monomials grows beyond what a person can read. */
-const highestOrder = 12;
+export const highestOrder = 12;
 
 /**
  * Settings from what an editor sent, which may be anything: what is missing or makes no sense is taken from `standardSettings`.
