@@ -1,14 +1,18 @@
 import type { Complex } from '../algebra/expression';
 
-/** Solves A x = b (small, dense, complex) with partial pivoting. Null where A is singular to rounding (1e-11 of its largest entry). */
+/** Solves A x = b (small, dense, complex) by elimination with pivoting, columns then rows scaled to 1. Null where A is singular to rounding. */
 export function solveSmall(a: readonly (readonly Complex[])[], b: readonly Complex[]): Complex[] | null {
   const n = b.length;
-  const rows = a.map((row, i) => [...row, b[i]]);
-  const largest = Math.max(...a.flat().map(c => Math.hypot(c.re, c.im)));
+  const columnScale = b.map((_, j) => Math.max(...a.map(row => modulus(row[j]))) || 1);
+  const rows = a.map((row, i) => {
+    const scaled = row.map((c, j) => ({ re: c.re / columnScale[j], im: c.im / columnScale[j] }));
+    const rowScale = Math.max(...scaled.map(modulus)) || 1;
+    return [...scaled, b[i]].map(c => ({ re: c.re / rowScale, im: c.im / rowScale }));
+  });
   for (let column = 0; column < n; column++) {
     let pivot = column;
     for (let i = column + 1; i < n; i++) if (modulus(rows[i][column]) > modulus(rows[pivot][column])) pivot = i;
-    if (!(modulus(rows[pivot][column]) > 1e-11 * largest)) return null;
+    if (!(modulus(rows[pivot][column]) > 1e-9)) return null;
     [rows[column], rows[pivot]] = [rows[pivot], rows[column]];
     for (let i = 0; i < n; i++) {
       if (i === column) continue;
@@ -16,7 +20,10 @@ export function solveSmall(a: readonly (readonly Complex[])[], b: readonly Compl
       for (let j = column; j <= n; j++) rows[i][j] = subtract(rows[i][j], multiply(factor, rows[column][j]));
     }
   }
-  return rows.map((row, i) => divide(row[n], row[i]));
+  return rows.map((row, i) => {
+    const x = divide(row[n], row[i]);
+    return { re: x.re / columnScale[i], im: x.im / columnScale[i] };
+  });
 }
 
 const modulus = (x: Complex): number => Math.hypot(x.re, x.im);

@@ -1,0 +1,106 @@
+import { NoExpansion } from '../algebra/at-infinity';
+import { KernelError, matrixElement } from '../model/matrix-element';
+import { kinematicsOf, type Kinematics } from '../model/kinematics';
+import { regulatorOf, type Regulator } from '../model/regulator';
+import type { InteractionSpec, ModelSpec } from '../model/spec';
+import { localParts, vertexOf, type Vertex } from '../model/vertex';
+import type { Remark } from '../results';
+import { hardBehaviour, UnknownBehaviour, type HardBehaviour } from './hard-behaviour';
+import { propagatorFall } from './loop-moments';
+import { monomialsUpTo, type MonomialList } from './monomials';
+import type { Counterterm } from './subtraction';
+
+/** A model lowered to what the series is made of. */
+export interface Setup {
+  readonly spec: ModelSpec;
+  readonly kinematics: Kinematics;
+  readonly regulator: Regulator;
+  readonly list: MonomialList;
+  readonly vertices: readonly Vertex[];
+  readonly counterterms: readonly Counterterm[];
+  /** Null where the behaviour of that kernel at large momenta is unknown. */
+  readonly behaviours: readonly (HardBehaviour | null)[];
+  /** G ~ k^-fall; null where the kinetic energy has no expansion. */
+  readonly fall: number | null;
+  /** A momentum of the size of those looked at. */
+  readonly momentum: number;
+  /** Largest power of a momentum in any contact, plus one. */
+  readonly size: number;
+  readonly remarks: readonly Remark[];
+}
+
+/** Lowers the model. Null vertices (with a remark) where a kernel has no matrix element: then nothing can be said about the model. */
+export function setUp(spec: ModelSpec): { setup: Setup | null; remarks: readonly Remark[] } {
+  const remarks: Remark[] = [];
+  const couplings = new Map(spec.couplings.map(c => [c.name, c.value]));
+  const lower = (interaction: InteractionSpec): Vertex | null => {
+    try {
+      return vertexOf(interaction.name, matrixElement(interaction, spec, couplings));
+    } catch (error) {
+      if (!(error instanceof KernelError)) throw error;
+      remarks.push({ code: error.code, message: error.message, subject: interaction.name });
+      return null;
+    }
+  };
+  const vertices = spec.interactions.map(lower);
+  const forms = spec.counterterms.map(c => {
+    if ('of' in c.form) return vertices[spec.interactions.findIndex(i => 'of' in c.form && i.name === c.form.of)] ?? null;
+    return lower({ name: c.name, arguments: c.form.arguments, kernel: c.form.expr, order: 1 });
+  });
+  if ([...vertices, ...forms].some(v => v === null)) return { setup: null, remarks };
+  const kinematics = kinematicsOf(spec);
+  const all = [...vertices, ...forms].map(v => v!);
+  const angular = spec.wave.kind === 'angular' ? Math.abs(spec.wave.number) : 0;
+  const behaviours = vertices.map(v => {
+    try {
+      return hardBehaviour(v!.element.shape, kinematics, angular);
+    } catch (error) {
+      if (!(error instanceof UnknownBehaviour)) throw error;
+      return null;
+    }
+  });
+  const setup: Setup = {
+    spec,
+    kinematics,
+    regulator: regulatorOf(spec.cutoff.shape),
+    list: monomialsUpTo(spec.interactions, spec.series.order),
+    vertices: vertices.map(v => v!),
+    counterterms: spec.counterterms.map((c, j) => ({ spec: c, vertex: forms[j]! })),
+    behaviours,
+    fall: fallOf(kinematics),
+    momentum: typicalMomentum(spec, kinematics),
+    size: 1 + Math.max(0, ...all.flatMap(v => v.contact ?? []).map(t => Math.max(t.a, t.b))),
+    remarks,
+  };
+  return { setup, remarks };
+}
+
+function fallOf(kinematics: Kinematics): number | null {
+  try {
+    const fall = propagatorFall(kinematics);
+    return fall > 0 ? fall : null;
+  } catch (error) {
+    if (error instanceof NoExpansion) return null;
+    throw error;
+  }
+}
+
+/** The median of the momenta asked for. */
+function typicalMomentum(spec: ModelSpec, kinematics: Kinematics): number {
+  const momenta = spec.series.points
+    .map(({ p, E }) => (p !== null ? Math.abs(p) : E !== null ? Math.abs(kinematics.roots(E).at(-1)?.p ?? 0) : 0))
+    .filter(p => p > 0)
+    .sort((x, y) => x - y);
+  return momenta[momenta.length >> 1] ?? spec.cutoff.value / 20;
+}
+
+/** Momenta over which the local kernels of a model change, where they do. */
+export function kernelScales(vertices: readonly Vertex[]): number[] {
+  return vertices.flatMap(v => localParts(v.element.shape)).map(shape => shape.scale).filter(scale => scale > 0 && Number.isFinite(scale));
+}
+
+/** Largest length of an oscillation e^(i phase k) of a kernel; 0 where there is none. */
+export function oscillationLength(vertices: readonly Vertex[]): number {
+  const phases = vertices.flatMap(v => localParts(v.element.shape)).flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])]);
+  return Math.max(0, ...phases.map(t => Math.abs(t.phase)));
+}
