@@ -40,9 +40,10 @@ export function contactSetting(
   kinematics: Kinematics,
   regulator: Regulator,
   momentum: number,
+  size: number,
 ): ContactSetting {
-  const size = 1 + Math.max(0, ...vertices.flatMap(v => v ?? []).map(t => Math.max(t.a, t.b)));
-  const loops = Math.max(1, ...list.terms.map(t => t.factors - 1));
+  const contactTerms = list.terms.filter(t => t.exponents.every((m, i) => m === 0 || vertices[i]));
+  const loops = Math.max(1, ...contactTerms.map(t => t.factors - 1));
   const growth = Math.max(1, 2 * (size - 1) + kinematics.dimension - Math.floor(propagatorFall(kinematics)));
   const ring = new LaurentRing(-loops * growth, loops * growth, loops + 1);
   return { list, vertices, kinematics, regulator, ring, size, momentum };
@@ -69,6 +70,18 @@ export function contactGrowth(setting: ContactSetting): (ContactDivergence | nul
   const whole = growth(1);
   const weighted = setting.kinematics.signed ? growth(0.6180339887) : whole;
   return whole.map((g, n) => g && { ...g, conditional: growsFaster(weighted[n]!.power, weighted[n]!.log, g.power, g.log) });
+}
+
+/** Whether anything grows in each contact monomial once all that is nested has been subtracted; null for other monomials. */
+export function contactsWithOverall(setting: ContactSetting): (boolean | null)[] {
+  const point = pointAt(setting, energyAway(setting.kinematics, setting.momentum, 0.7310585786));
+  const found: boolean[] = [];
+  const chain = contactChain(setting.list, setting.vertices, [point], setting.ring, setting.size, (n, [remainder]) => {
+    const counterterm = minimalCounterterm(remainder, setting.ring, 1);
+    found[n] = setting.list.terms[n].factors > 1 && counterterm.some(c => c);
+    return found[n] ? [counterterm] : null;
+  });
+  return chain.map((grids, n) => grids && found[n]);
 }
 
 /** What is left of each contact monomial once all that is nested has been subtracted minimally, logarithms as ln(L / 1 unit). */

@@ -26,7 +26,24 @@ export interface HardBehaviour {
 /** Thrown where the behaviour of a kernel at large momenta could not be worked out. */
 export class UnknownBehaviour extends Error {}
 
+/** Throws `UnknownBehaviour`. */
 export function hardBehaviour(shape: KernelShape, kinematics: Kinematics, angular: number): HardBehaviour {
+  const all = behaviourOf(shape, kinematics, angular);
+  return { right: leading(all.right), left: leading(all.left), both: leading(all.both), diagonal: leading(all.diagonal) };
+}
+
+/** The largest degree for each phase and sign: what is below it cannot decide a verdict. */
+function leading(degrees: readonly Degree[]): Degree[] {
+  const best = new Map<string, Degree>();
+  for (const d of degrees) {
+    const key = `${d.phase}/${d.sign}`;
+    const known = best.get(key);
+    if (!known || d.degree > known.degree || (d.degree === known.degree && d.log > known.log)) best.set(key, d);
+  }
+  return [...best.values()];
+}
+
+function behaviourOf(shape: KernelShape, kinematics: Kinematics, angular: number): HardBehaviour {
   switch (shape.kind) {
     case 'polynomial':
       return {
@@ -36,7 +53,7 @@ export function hardBehaviour(shape: KernelShape, kinematics: Kinematics, angula
         diagonal: [],
       };
     case 'sum': {
-      const parts = shape.parts.map(part => hardBehaviour(part, kinematics, angular));
+      const parts = shape.parts.map(part => behaviourOf(part, kinematics, angular));
       const all = (key: keyof HardBehaviour) => parts.flatMap(part => part[key]);
       return { right: all('right'), left: all('left'), both: all('both'), diagonal: all('diagonal') };
     }
@@ -53,13 +70,13 @@ function localBehaviour(shape: LocalShape, { dimension }: Kinematics, angular: n
   const tails = localTails(shape);
   // A transfer k - p grows with the loop momentum; each partial wave of k^γ(1 + …) starts l powers of p/k further down.
   const soft = (terms: readonly TailTerm[], sign: 1 | -1): Degree[] => terms.map(t => ({ degree: t.power - angular, log: t.log, phase: t.phase, sign }));
-  const leading = [...tails.forward, ...tails.backward];
-  const steepest = leading.length ? Math.max(...leading.map(t => t.power)) : -Infinity;
+  const both = [...tails.forward, ...tails.backward];
+  const steepest = both.length ? Math.max(...both.map(t => t.power)) : -Infinity;
   return {
     // q = p - k runs against the sign of a large k, and with that of a large p.
     right: [...soft(tails.backward, 1), ...soft(tails.forward, -1)],
     left: [...soft(tails.forward, 1), ...soft(tails.backward, -1)],
-    both: leading.map(t => plain(t.power, t.log)),
+    both: both.map(t => plain(t.power, t.log)),
     diagonal: steepest < -dimension ? [plain(1 - dimension)] : [],
   };
 }

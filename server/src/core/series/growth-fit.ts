@@ -1,0 +1,94 @@
+import type { Complex } from '../algebra/expression';
+import { leastSquares } from '../linear/solve';
+
+/** How a sequence over a ladder of cutoffs grows, read off the numbers alone. */
+export interface NumericalGrowth {
+  readonly verdict: 'converges' | 'diverges' | 'unclear';
+  /** Of L^power (ln L)^log; 0, 0 where it converges. */
+  readonly power: number;
+  readonly log: number;
+}
+
+/** Relative rounding of a grid amplitude. */
+const NOISE = 1e-11;
+
+/**
+ * Growth from the numbers alone. y(L) at cutoffs in constant ratio: the differences of L^a ln^b L fall or grow as L^a ln^b L themselves
+ * (a > 0), as ln^(b-1) L (a = 0), or as the leading correction of a convergent sequence. The power is the slope of their logarithm; the
+ * power of the logarithm is how often L^-a y must be differenced before it dies out.
+ */
+export function growthFromNumbers(cutoffs: readonly number[], y: readonly Complex[]): NumericalGrowth {
+  const step = Math.log(cutoffs[1] / cutoffs[0]);
+  const size = Math.max(...y.map(modulus));
+  const differences = y.slice(1).map((v, j) => subtract(v, y[j]));
+  const tail = differences.slice(-4).map(modulus);
+  if (Math.max(...tail) <= NOISE * size || size === 0) return { verdict: 'converges', power: 0, log: 0 };
+  const slopes = tail.slice(1).map((d, j) => Math.log(d / tail[j]) / step);
+  const slope = slopes[slopes.length - 1];
+  if (!Number.isFinite(slope) || Math.max(...slopes) - Math.min(...slopes) > 0.35) return { verdict: 'unclear', power: 0, log: 0 };
+  if (slope < -0.45) return { verdict: 'converges', power: 0, log: 0 };
+  // A logarithm adds b/ln L to the slope: it never reaches half a power on the ladder.
+  const power = Math.max(0, Math.round(2 * (slope - 0.12)) / 2);
+  let scaled = y.map((v, j) => times(v, cutoffs[j] ** -power));
+  const logs: number[] = [];
+  for (let b = 0; b <= 5 && scaled.length > 3; b++) {
+    const last = modulus(scaled[scaled.length - 1]);
+    const next = scaled.slice(1).map((v, j) => subtract(v, scaled[j]));
+    const ends = next.slice(-3).map(modulus);
+    if (ends[2] <= 30 * NOISE * last * 2 ** b || ends[2] < 0.74 * ends[1]) return { verdict: power > 0 || b > 0 ? 'diverges' : 'converges', power, log: b };
+    logs.push(b);
+    scaled = next;
+  }
+  return { verdict: 'unclear', power: 0, log: 0 };
+}
+
+/**
+ * Do the numbers grow as L^power (ln L)^log? The slope must say the power; with one more logarithm offered to the fit, that one must come
+ * out as nothing beside the predicted one.
+ */
+export function growsAs(cutoffs: readonly number[], y: readonly Complex[], predicted: Growth | null): boolean {
+  const seen = growthFromNumbers(cutoffs, y);
+  if (!predicted) return seen.verdict === 'converges';
+  if (seen.verdict === 'diverges' && seen.power === predicted.power && seen.log === predicted.log) return true;
+  if (seen.verdict === 'converges' || Math.abs(seen.power - predicted.power) > (seen.verdict === 'unclear' ? Infinity : 0.5)) return false;
+  const { power, log } = predicted;
+  const growing = Array.from({ length: log + 2 }, (_, j) => ({ power, log: log + 1 - j }));
+  const falling = [1, 2, 3].flatMap(d => (d === 1 ? [2, 1, 0] : [1, 0]).map(b => ({ power: power - d, log: b }))).slice(0, cutoffs.length - growing.length - 2);
+  const last = Math.log(cutoffs[cutoffs.length - 1]);
+  const sizes = [y.map(v => v.re), y.map(v => v.im)].map(part => {
+    const fit = fitGrowth(cutoffs, part, growing, falling);
+    return fit ? growing.map((g, j) => Math.abs(fit.coefficients[j]) * last ** g.log) : null;
+  });
+  if (sizes.some(s => s === null)) return false;
+  const unpredicted = Math.hypot(sizes[0]![0], sizes[1]![0]);
+  const wanted = Math.hypot(sizes[0]![1], sizes[1]![1]);
+  return unpredicted < 0.05 * wanted;
+}
+
+/** L^power (ln L)^log. */
+export interface Growth {
+  readonly power: number;
+  readonly log: number;
+}
+
+/** Coefficients of the wanted growths, fitted together with terms that fall off; and how far they move when the lowest cutoff is dropped. */
+export function fitGrowth(cutoffs: readonly number[], y: readonly number[], growing: readonly Growth[], falling: readonly Growth[]): { coefficients: number[]; shift: number[] } | null {
+  const all = [...growing, ...falling];
+  const solve = (from: number): number[] | null => {
+    const unit = cutoffs[from];
+    const highest = Math.max(0, ...growing.map(g => g.power));
+    // Each row in units of the fastest growth, so that every cutoff counts alike.
+    const rows = cutoffs.slice(from).map(L => all.map(g => (L / unit) ** (g.power - highest) * Math.log(L) ** g.log));
+    const rhs = y.slice(from).map((v, j) => v * (cutoffs[from + j] / unit) ** -highest);
+    return leastSquares(rows, rhs)?.map((c, j) => c * unit ** -all[j].power) ?? null;
+  };
+  if (cutoffs.length < all.length + 2) return null;
+  const whole = solve(0);
+  const shorter = solve(1);
+  if (!whole || !shorter) return null;
+  return { coefficients: whole.slice(0, growing.length), shift: growing.map((_, j) => Math.abs(whole[j] - shorter[j])) };
+}
+
+const modulus = (x: Complex): number => Math.hypot(x.re, x.im);
+const subtract = (x: Complex, y: Complex): Complex => ({ re: x.re - y.re, im: x.im - y.im });
+const times = (x: Complex, s: number): Complex => ({ re: x.re * s, im: x.im * s });
