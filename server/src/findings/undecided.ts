@@ -33,5 +33,6 @@ function openExpectations(model: Evaluated): Draft[] {
   });
 }
 
+/** Whether the core has said why; a remark about nothing in particular explains everything that is open. */
 const spokenOf = ({ results }: Evaluated, subject: string): boolean =>
-  results.remarks.some(remark => remark.subject === subject && (remark.code === 'undecided' || remark.code === 'budget'));
+  results.remarks.some(remark => (remark.subject === subject || remark.subject === null) && (remark.code === 'undecided' || remark.code === 'budget'));

@@ -1,8 +1,11 @@
+/** Below this a number is drawn as zero: an axis around it would have no room for its ticks. */
+const smallest = 1e-290;
+
 /** The range of some values with room above and below; a constant gets a range of its own size. Never empty. */
 export function padded(values: readonly number[]): [number, number] {
   const [low, high] = [Math.min(...values), Math.max(...values)];
   const size = Math.max(Math.abs(low), Math.abs(high));
-  const room = Math.max(0.06 * (high - low), 1e-3 * size) || 1;
+  const room = size < smallest ? 1 : Math.max(0.06 * (high - low), 1e-3 * size);
   return [low - room, high + room];
 }
 

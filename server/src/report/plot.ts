@@ -33,10 +33,15 @@ const ink = '#82878f';
 const size = { width: 440, height: 236 };
 const frame = { left: 62, right: size.width - 14, top: 40, bottom: size.height - 40 };
 
+/** Beyond this the arithmetic of an axis overflows. */
+const largest = 1e300;
+const drawable = (value: number): boolean => Math.abs(value) < largest;
+const drawableX = (x: number): boolean => x > 1 / largest && x < largest;
+
 /** The plot as SVG text: x logarithmic, y linear, transparent ground. Empty where fewer than two points can be drawn. */
 export function plotSvg(plot: Plot): string {
-  const usable = plot.x.filter((x, index) => x > 0 && Number.isFinite(x) && plot.curves.some(({ y }) => Number.isFinite(y[index])));
-  const values = plot.curves.flatMap(({ y }) => y.filter(Number.isFinite));
+  const usable = plot.x.filter((x, index) => drawableX(x) && plot.curves.some(({ y }) => drawable(y[index]!)));
+  const values = plot.curves.flatMap(({ y }) => y.filter((value, index) => drawable(value) && drawableX(plot.x[index]!)));
   if (new Set(usable).size < 2 || values.length === 0) return '';
   const x = scaleLog([Math.min(...usable), Math.max(...usable)], [frame.left, frame.right]);
   const y = scaleLinear(padded(values), [frame.bottom, frame.top]);
@@ -63,7 +68,7 @@ export function plotAddress(plot: Plot): string {
 
 function curvePath({ y: values }: Curve, at: readonly number[], x: (v: number) => number, y: (v: number) => number, index: number): string {
   const { colour, dash, width } = strokes[index % strokes.length]!;
-  const drawn = line<number>().defined((value, i) => Number.isFinite(value) && at[i]! > 0 && Number.isFinite(at[i])).x((_, i) => x(at[i]!)).y(value => y(value)).digits(2);
+  const drawn = line<number>().defined((value, i) => drawable(value) && drawableX(at[i]!)).x((_, i) => x(at[i]!)).y(value => y(value)).digits(2);
   return `<path d="${drawn(values) ?? ''}" fill="none" stroke="${colour}" stroke-width="${width}" stroke-linejoin="round" stroke-linecap="round"${dash && ` stroke-dasharray="${dash}"`}/>`;
 }
 
