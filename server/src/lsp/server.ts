@@ -5,7 +5,9 @@ import {
   type InitializeParams,
   type InitializeResult,
   MarkupKind,
+  MessageType,
   PositionEncodingKind,
+  ShowMessageNotification,
   TextDocumentSyncKind,
   TextDocuments,
 } from 'vscode-languageserver/node';
@@ -54,7 +56,9 @@ export function serve(connection: Connection, places: ServerPlaces): void {
 
   const configure = (section: unknown): void => {
     const { settings, complaints } = readSettings(section);
-    for (const complaint of complaints) connection.window.showWarningMessage(complaint);
+    for (const message of complaints) {
+      void logging(() => connection.sendNotification(ShowMessageNotification.type, { type: MessageType.Warning, message }));
+    }
     scheduler.configure(settings);
   };
   const pullSettings = (): Promise<void> => logging(async () => configure(await connection.workspace.getConfiguration('tare')));
