@@ -1,5 +1,5 @@
 import { complexArithmetic, complexFunction, complexPower } from '../algebra/compile';
-import { binary, number, substitute, symbol, symbolsOf } from '../algebra/expression';
+import { binary, number, symbol } from '../algebra/expression';
 import type { Complex, Expr } from '../algebra/expression';
 import { KernelError } from './kernel-error';
 import { constantValue } from './recognise-constant';
@@ -22,9 +22,9 @@ export interface PositionTerm {
   readonly to: number;
   /** Derivatives of delta(y); null without a delta. */
   readonly delta: number | null;
-  /** Factors of other forms, in the variable itself; null where there is none. */
+  /** Factors of other forms, the variable standing for y; null where there is none. */
   readonly rest: Expr | null;
-  /** The whole term, in the variable. */
+  /** The whole term, the variable standing for y. */
   readonly expr: Expr;
 }
 
@@ -37,8 +37,7 @@ export function positionTerms(kernel: Expr, variable: string, radial: boolean): 
   return expandTerms(kernel, positive).flatMap(term => {
     const centre = radial ? 0 : centreOf(term, variable);
     if (centre === 0) return [new Reader(variable, radial, 0, termExpr(term)).read(term)];
-    const shifted = substitute(termExpr(term), new Map([[variable, binary('add', symbol(variable), number(centre))]]));
-    return expandTerms(shifted, positive).map(t => new Reader(variable, radial, centre, termExpr(t)).read(t));
+    return expandTerms(shifted(termExpr(term), variable, centre), positive).map(t => new Reader(variable, radial, centre, termExpr(t)).read(t));
   });
 }
 
@@ -59,6 +58,20 @@ function centreOf(term: Term, variable: string): number {
     }
   }
   return curvature === 0 ? 0 : -slope / (2 * curvature) + 0;
+}
+
+/** `expr` with variable + centre for the variable; constants that cancel in a linear argument are gone, so that |x - a| becomes |y| exactly. */
+function shifted(expr: Expr, variable: string, centre: number): Expr {
+  const line = lineIn(expr, variable);
+  if (line) {
+    const constant = line.constant + line.slope * centre;
+    const slope = binary('multiply', number(line.slope), symbol(variable));
+    return Math.abs(constant) <= 1e-14 * Math.abs(line.constant) ? slope : binary('add', slope, number(constant));
+  }
+  if (expr.kind === 'number' || expr.kind === 'symbol') return expr;
+  if (expr.kind === 'negate') return { ...expr, argument: shifted(expr.argument, variable, centre) };
+  if (expr.kind === 'call') return { ...expr, arguments: expr.arguments.map(a => shifted(a, variable, centre)) };
+  return { ...expr, left: shifted(expr.left, variable, centre), right: shifted(expr.right, variable, centre) };
 }
 
 /** The zero of the argument of the first modulus in `expr`. */
@@ -95,20 +108,18 @@ class Reader {
     private readonly variable: string,
     private readonly radial: boolean,
     private readonly centre: number,
-    private readonly shifted: Expr,
+    private readonly expr: Expr,
   ) {
     this.from = radial ? 0 : -Infinity;
   }
 
   read(term: Term): PositionTerm {
     for (const factor of term) if (!this.take(factor)) this.rest.push(factor);
-    const back = (expr: Expr) =>
-      this.centre === 0 ? expr : substitute(expr, new Map([[this.variable, binary('subtract', symbol(this.variable), number(this.centre))]]));
     return {
       coefficient: this.coefficient, centre: this.centre, power: this.power, odd: this.odd, linear: this.linear,
       quadratic: this.quadratic, from: this.from, to: this.to, delta: this.delta,
-      rest: this.rest.length > 0 ? back(termExpr(this.rest)) : null,
-      expr: back(this.shifted),
+      rest: this.rest.length > 0 ? termExpr(this.rest) : null,
+      expr: this.expr,
     };
   }
 
@@ -201,6 +212,3 @@ class Reader {
     return this.multiply({ re: 1 / (Math.abs(line.slope) * line.slope ** primes), im: 0 });
   }
 }
-
-/** The names a kernel still holds besides its own argument. */
-export const strangers = (kernel: Expr, own: readonly string[]): string[] => [...symbolsOf(kernel)].filter(name => !own.includes(name));

@@ -1,7 +1,5 @@
-import { compile } from '../algebra/compile';
 import { substitute, number } from '../algebra/expression';
 import type { Expr } from '../algebra/expression';
-import { specialFunctions } from '../special';
 import { KernelError } from './kernel-error';
 import { constantValue } from './recognise-constant';
 import { positionTerms } from './recognise-position';
@@ -69,7 +67,7 @@ function deltaTerm(term: PositionTerm, primes: number, variable: string): readon
   let { coefficient } = term;
   if (power < 0 || (odd && power % 2 === 0)) throw new KernelError('value', 'The factor of a delta must be finite where the delta sits.');
   if (rest) {
-    const value = primes === 0 ? factorAt(rest, variable, centre) : null;
+    const value = primes === 0 ? factorAt(rest, variable) : null;
     if (!value) throw new KernelError('not-evaluated', "A derivative of delta is taken only with powers as factors; write f(x)*delta'(x) as f(0)*delta'(x) - f'(0)*delta(x).");
     coefficient = { re: coefficient.re * value.re - coefficient.im * value.im, im: coefficient.re * value.im + coefficient.im * value.re };
   }
@@ -88,8 +86,8 @@ function deltaTerm(term: PositionTerm, primes: number, variable: string): readon
   return contacts;
 }
 
-function factorAt(rest: Expr, variable: string, at: number) {
-  const value = constantValue(substitute(rest, new Map([[variable, number(at)]])));
+function factorAt(rest: Expr, variable: string) {
+  const value = constantValue(substitute(rest, new Map([[variable, number(0)]])));
   if (value && !(Number.isFinite(value.re) && Number.isFinite(value.im))) throw new KernelError('value', 'The factor of a delta must be finite where the delta sits.');
   return value;
 }
@@ -98,12 +96,3 @@ function timesPowerOfI({ re, im }: { re: number; im: number }, n: number): { re:
   return n === 0 ? { re, im } : timesPowerOfI({ re: -im + 0, im: re + 0 }, n - 1);
 }
 
-/** A real function of one variable from an expression; NaN where it is complex. */
-export function realFunction(expr: Expr, variable: string): (x: Float64Array, out: Float64Array) => void {
-  const compiled = compile(expr, specialFunctions);
-  return (x, out) => {
-    const im = new Float64Array(x.length);
-    compiled({ [variable]: x }, out, im);
-    for (let j = 0; j < x.length; j++) if (im[j] !== 0) out[j] = NaN;
-  };
-}

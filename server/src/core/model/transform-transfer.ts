@@ -1,17 +1,19 @@
-import { compile } from '../algebra/compile';
-import { symbol } from '../algebra/expression';
+import { NoExpansion } from '../algebra/at-infinity';
+import { compile, complexArithmetic, complexPower } from '../algebra/compile';
+import { binary, negate, number, substitute, symbol } from '../algebra/expression';
 import type { Expr } from '../algebra/expression';
 import { specialFunctions } from '../special';
 import { KernelError } from './kernel-error';
+import type { TailTerm } from './kernel-shape';
 import { constantValue } from './recognise-constant';
 import { polynomialIn } from './recognise-polynomial';
 import { expandTerms, termExpr } from './recognise-terms';
 import type { Term } from './recognise-terms';
-import { complexArithmetic, complexPower } from '../algebra/compile';
 import type { LocalPiece } from './transform';
 import type { ContactPower, Transformed } from './transform-local';
 import { gaussianInTransfer } from './transform-gaussian';
 import { polesPiece } from './transform-poles';
+import { expandTransfer, mergeTail } from './transform-tail';
 
 /** A kernel given as V(q): powers of q, poles and Gaussians in closed form, other terms as they stand. */
 export function transferPieces(kernel: Expr, dimension: 1 | 2 | 3): Transformed {
@@ -67,8 +69,15 @@ function closedTerm(term: Term, dimension: 1 | 2 | 3): ContactPower | LocalPiece
   return null;
 }
 
-/** V(q) by the compiled expression: its real and its imaginary part. */
+/** V(q) by the compiled expression: its even and odd, real and imaginary parts, those that there are. */
 function plainPieces(expr: Expr, dimension: 1 | 2 | 3): readonly LocalPiece[] {
+  if (dimension > 1) return partsOf(expr, false);
+  const mirrored = substitute(expr, new Map([['q', negate(symbol('q'))]]));
+  const half = (kind: 'add' | 'subtract') => binary('divide', binary(kind, expr, mirrored), number(2));
+  return [...partsOf(half('add'), false), ...partsOf(half('subtract'), true)];
+}
+
+function partsOf(expr: Expr, odd: boolean): readonly LocalPiece[] {
   const compiled = compile(expr, specialFunctions);
   const evaluate = (q: Float64Array) => {
     const re = new Float64Array(q.length);
@@ -76,37 +85,46 @@ function plainPieces(expr: Expr, dimension: 1 | 2 | 3): readonly LocalPiece[] {
     compiled({ q }, re, im);
     return { re, im };
   };
-  const { scale, complex } = probe(evaluate, dimension);
-  const piece = (part: 're' | 'im'): LocalPiece => ({
+  const { scale, present } = probe(evaluate);
+  return present.map(part => ({
     coefficient: part === 're' ? { re: 1, im: 0 } : { re: 0, im: 1 },
     centre: 0,
-    odd: false,
+    odd,
     value(q, out) {
       out.set(evaluate(q)[part]);
       // 0/0 at one point, as of sin(q)/q: the value beside it.
-      for (let j = 0; j < q.length; j++) if (Number.isNaN(out[j])) out[j] = evaluate(new Float64Array([q[j] + 1e-7 * scale]))[part][0];
+      for (let j = 0; j < q.length; j++) if (Number.isNaN(out[j])) out[j] = evaluate(Float64Array.of(q[j] + 1e-7 * (scale || 1)))[part][0];
     },
     family: { kind: 'other' },
     scale,
-    tail: null,
+    tail: tailOf(expr, part),
     smooth: false,
     origin: null,
-    transfer: part === 're' ? expr : { kind: 'multiply', left: { kind: 'number', re: 0, im: 0 }, right: symbol('q') },
+    transfer: present.length === 1 ? expr : null,
     relativeError: 1e-14,
-  });
-  return complex ? [piece('re'), piece('im')] : [piece('re')];
+  }));
+}
+
+function tailOf(expr: Expr, part: 're' | 'im'): readonly TailTerm[] | null {
+  try {
+    return mergeTail(expandTransfer(expr).map(t => ({ coefficient: { re: t.c[part], im: 0 }, power: t.power, log: t.log, phase: 0 })));
+  } catch (error) {
+    if (error instanceof NoExpansion) return null;
+    throw error;
+  }
 }
 
 /** Where V(q) changes: the smallest q at which it has left its value near 0 by a tenth; 0 if it has no such value. */
-function probe(evaluate: (q: Float64Array) => { re: Float64Array; im: Float64Array }, dimension: 1 | 2 | 3): { scale: number; complex: boolean } {
-  const points = 400;
-  const q = Float64Array.from({ length: points }, (_, j) => 1e-8 * 10 ** ((16 * j) / points));
-  const { re, im } = evaluate(q);
-  const { im: imBackward } = dimension === 1 ? evaluate(q.map(x => -x)) : { im };
-  const first = Math.hypot(re[0], im[0]);
-  if (Array.from(q.keys()).every(j => Number.isNaN(re[j]))) throw new KernelError('value', 'This kernel has no value at any momentum transfer.');
-  const singular = !Number.isFinite(first) || Math.abs(Math.hypot(re[20], im[20]) - first) > 1e-3 * first;
-  const changed = q.findIndex((_, j) => Math.hypot(re[j] - re[0], im[j] - im[0]) > 0.1 * first);
-  const scale = singular ? 0 : changed < 0 ? 1 : q[changed];
-  return { scale, complex: im.some(x => x !== 0) || imBackward.some(x => x !== 0) };
+function probe(evaluate: (q: Float64Array) => { re: Float64Array; im: Float64Array }): { scale: number; present: ('re' | 'im')[] } {
+  const { re, im } = evaluate(PROBES);
+  const sizes = re.map((x, j) => Math.hypot(x, im[j]));
+  if (sizes.every(Number.isNaN)) throw new KernelError('value', 'This kernel has no value at any momentum transfer.');
+  const largest = Math.max(...sizes.filter(Number.isFinite));
+  const present = (['re', 'im'] as const).filter(part => ({ re, im })[part].some(x => Math.abs(x) > 1e-14 * largest));
+  const start = sizes[0];
+  const settled = Math.hypot(re[25] - re[0], im[25] - im[0]) <= 1e-3 * Math.max(start, 1e-6 * largest);
+  const changed = PROBES.findIndex((_, j) => Math.hypot(re[j] - re[0], im[j] - im[0]) > 0.1 * (start || largest));
+  return { scale: !settled ? 0 : changed < 0 ? 1 : PROBES[changed], present };
 }
+
+const PROBES = Float64Array.from({ length: 401 }, (_, j) => 1e-8 * 10 ** ((16 * j) / 400));

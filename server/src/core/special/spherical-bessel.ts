@@ -40,3 +40,38 @@ function downward(l: number, x: number): number {
   const j1 = (j0 - Math.cos(x)) / x;
   return Math.abs(j0) > Math.abs(j1) ? (wanted / value) * j0 : (wanted / above) * j1;
 }
+
+/** j_0(x) … j_top(x) into `out` (length top + 1), x real: upwards where x is large, downwards from far above otherwise. */
+export function sphericalBessels(top: number, x: number, out: Float64Array): void {
+  const size = Math.abs(x);
+  if (size < 1e-150) {
+    out.fill(0);
+    out[0] = 1;
+    return;
+  }
+  const j0 = Math.sin(size) / size;
+  const j1 = size < 0.1 ? series(1, size) : (j0 - Math.cos(size)) / size;
+  if (size > top) {
+    out[0] = j0;
+    if (top > 0) out[1] = j1;
+    for (let n = 1; n < top; n++) out[n + 1] = ((2 * n + 1) / size) * out[n] - out[n - 1];
+  } else {
+    // Ratios j_n/j_(n-1) from the continued fraction; where j_(n-1) is near a zero, the ratio is merely large.
+    let ratio = 0;
+    for (let n = top + 20 + Math.ceil(Math.sqrt(40 * top)); n > top; n--) ratio = size / (2 * n + 1 - size * ratio);
+    let above = ratio;
+    let value = 1;
+    for (let n = top; n > 0; n--) {
+      out[n] = value;
+      [above, value] = [value, ((2 * n + 1) / size) * value - above];
+      if (Math.abs(value) > 1e200) {
+        for (let m = n; m <= top; m++) out[m] *= 1e-200;
+        [above, value] = [above * 1e-200, value * 1e-200];
+      }
+    }
+    out[0] = value;
+    const norm = top === 0 || Math.abs(j0) > Math.abs(j1) ? j0 / out[0] : j1 / out[1];
+    for (let n = 0; n <= top; n++) out[n] *= norm;
+  }
+  if (x < 0) for (let n = 1; n <= top; n += 2) out[n] = -out[n];
+}
