@@ -1,7 +1,7 @@
 import { defineConfig } from 'vitest/config';
 
 /** Tests that start what is built. */
-const programs = ['test/cli/**/*.test.ts', 'test/lsp/**/*.test.ts', 'test/session/**/*.test.ts'];
+const programs = ['test/cli/**/*.test.ts', 'test/lsp/**/*.test.ts', 'test/session/**/*.test.ts', 'test/package.test.ts'];
 /** Tests that measure time, or wait for a browser to show something: one at a time, after the others. */
 const alone = ['test/bench/**/*.test.ts', 'test/editor/**/*.test.ts'];
 const globalSetup = 'test/build.ts';

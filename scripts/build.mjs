@@ -2,6 +2,7 @@
 import { chmodSync, readdirSync, statSync } from 'node:fs';
 import { join } from 'node:path';
 import { build } from 'esbuild';
+import { writeNotices } from './notices.mjs';
 
 const root = join(import.meta.dirname, '..');
 
@@ -14,17 +15,20 @@ export async function buildAll() {
     format: 'cjs',
     target: 'node20',
     logLevel: 'warning',
-    legalComments: 'linked',
+    legalComments: 'none', // whole licences go to NOTICES.txt
+    metafile: true,
     // Packages offer two forms; from the one in modules the unused parts can be left out.
     mainFields: ['module', 'main'],
   };
   const program = (entry, name, more = {}) => build({ ...common, entryPoints: [entry], outfile: `dist/${name}.js`, ...more });
-  await Promise.all([
+  const bundles = await Promise.all([
     program('client/src/extension.ts', 'client', { external: ['vscode'] }),
     program('server/src/lsp/main.ts', 'server'),
     program('server/src/session/worker.ts', 'worker'),
     program('server/src/cli/main.ts', 'cli', { banner: { js: '#!/usr/bin/env node' } }),
   ]);
+  const inputs = bundles.flatMap(({ metafile }) => Object.keys(metafile.inputs));
+  writeNotices(root, inputs, join(root, 'dist/NOTICES.txt'));
   chmodSync(join(root, 'dist/cli.js'), 0o755);
 }
 

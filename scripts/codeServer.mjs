@@ -52,7 +52,7 @@ function npm(cwd, command, ...args) {
     });
   } catch (error) {
     throw new Error(`npm ${command} ${args.join(' ')} failed in ${cwd}:\n${String(error.stderr ?? error).slice(-3000)}`, {
-      cause: error.code,
+      cause: error,
     });
   }
 }

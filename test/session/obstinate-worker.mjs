@@ -1,4 +1,5 @@
 // A worker for the tests of the evaluator: how it behaves is the name of the model.
+import process from 'node:process';
 import { parentPort, workerData } from 'node:worker_threads';
 
 const wanted = new Int32Array(workerData.wanted);
