@@ -45,7 +45,8 @@ export function contactSetting(
   const contactTerms = list.terms.filter(t => t.exponents.every((m, i) => m === 0 || vertices[i]));
   const loops = Math.max(1, ...contactTerms.map(t => t.factors - 1));
   const growth = Math.max(1, 2 * (size - 1) + kinematics.dimension - Math.floor(propagatorFall(kinematics)));
-  const ring = new LaurentRing(-loops * growth, loops * growth, loops + 1);
+  // Six powers below what can still grow, so that the value of a polynomial can be held against numbers at cutoffs of 50 soft momenta.
+  const ring = new LaurentRing(-loops * growth - 6, loops * growth, loops + 1);
   return { list, vertices, kinematics, regulator, ring, size, momentum };
 }
 

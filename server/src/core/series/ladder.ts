@@ -28,12 +28,14 @@ export interface LadderWishes {
   /** Different external momenta (each with both signs in dimension 1, full). */
   readonly momenta: number;
   readonly pointsPerPanel: number;
+  /** Fastest bare growth: steep ones take a short ladder, since rounding of the leading term hides what lies below it. */
+  readonly steepest: number;
 }
 
 /** Start of the ladder in units of the largest soft momentum; a power law has to be visible through its corrections. */
 const START = 50;
-/** Ratio of successive cutoffs: irrational, so that no oscillation is met always at the same phase. */
-const RATIO = Math.SQRT2 * 1.0905077;
+/** Ratio of successive cutoffs: no simple number, so that no oscillation is met always at the same phase. */
+const RATIO = { gentle: 1.5422107, steep: 1.2713049 };
 
 export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const { kinematics, regulator, list, vertices, size } = setup;
@@ -43,7 +45,8 @@ export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const momenta = Array.from({ length: wishes.momenta }, (_, j) => soft * (0.61803 + 0.41421 * j));
   const externals = momenta.flatMap(k => externalsAt(kinematics, k));
   const start = START * Math.max(soft, length > 0 ? 2 / length : 0);
-  const cutoffs = Array.from({ length: wishes.rungs }, (_, j) => start * RATIO ** j);
+  const ratio = wishes.steepest > 3 ? RATIO.steep : RATIO.gentle;
+  const cutoffs = Array.from({ length: wishes.rungs }, (_, j) => start * ratio ** j);
   const energies = Array.from({ length: wishes.energies }, (_, j) => energyAway(kinematics, soft, 0.7310585786 + 0.6 * j));
   const rungs = cutoffs.map(cutoff => {
     const grid = momentumGrid(kinematics, regulator, cutoff, gridWishes(setup, momenta, wishes.pointsPerPanel));

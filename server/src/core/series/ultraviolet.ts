@@ -1,0 +1,132 @@
+import type { OverallForm, Remark, Ultraviolet } from '../results';
+import type { Complex } from '../algebra/expression';
+import { isMultipleOf } from './forms';
+import { contactAgrees, contactsOnLadder } from './contact-confirm';
+import { contactOverall, contactsWithOverall } from './contact-divergences';
+import { fitOverall, type FittedForm, type FittedOverall } from './dense-overall';
+import { growsAs } from './growth-fit';
+import type { ScaledVertex } from './grid-chain';
+import { buildLadder, type Ladder, type LadderWishes } from './ladder';
+import { isProperPart } from './monomials';
+import type { Setup } from './setup';
+import type { SymbolicVerdicts } from './verdicts';
+import { formVertex } from './form-vertex';
+
+/** Ultraviolet answers for every monomial, with whatever else has to be said. */
+export interface UltravioletResults {
+  readonly terms: readonly Ultraviolet[];
+  /** Fitted forms of the monomials that are no contacts, for their minimal counterterms. */
+  readonly fitted: readonly (FittedOverall | null)[];
+  readonly remarks: readonly Remark[];
+}
+
+/** Verdicts alone: nothing confirmed, no forms yet. */
+export function symbolicUltraviolet(setup: Setup, symbolic: SymbolicVerdicts): Ultraviolet[] {
+  const overall = symbolic.contacts ? contactsWithOverall(symbolic.contacts) : [];
+  const leftOver = symbolic.terms.map((t, n) => overall[n] ?? (t.overallDegree >= 0 && t.verdict === 'diverges'));
+  return symbolic.terms.map((_, n) => assemble(setup, symbolic, n, leftOver, [], false));
+}
+
+/** Verdicts, forms with coefficients, and the numerical confirmation. */
+export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, shouldStop: () => boolean): UltravioletResults {
+  const remarks: Remark[] = [];
+  const exact = symbolic.contacts ? contactOverall(symbolic.contacts) : [];
+  const dense = symbolic.terms.map(t => !t.contact && t.verdict !== 'undecided' && !t.tooSoft);
+  const fitted: (FittedOverall | null)[] = symbolic.terms.map(() => null);
+  const ladder = buildLadder(setup, ladderWishes(symbolic, dense));
+  const confirmed = confirm(symbolic, ladder, shouldStop);
+  if (symbolic.terms.some((t, n) => dense[n] && t.overallDegree >= 0)) fitDense(setup, symbolic, ladder, dense, exact, fitted, shouldStop);
+  const forms = symbolic.terms.map((_, n): OverallForm[] => {
+    const list: readonly FittedForm[] = exact[n]?.forms.map(f => ({ ...f, uncertainty: 1e-10 * Math.hypot(f.coefficient.re, f.coefficient.im) })) ?? fitted[n]?.forms ?? [];
+    return withUniversality(setup, list);
+  });
+  const leftOver = forms.map(f => f.length > 0);
+  const terms = symbolic.terms.map((t, n) => {
+    const local = exact[n]?.local ?? fitted[n]?.local ?? true;
+    const agrees = (confirmed[n] ?? false) && local;
+    if (t.verdict !== 'undecided' && !t.tooSoft && !agrees) remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, local) });
+    return assemble(setup, symbolic, n, leftOver, forms[n], agrees);
+  });
+  return { terms, fitted, remarks };
+}
+
+function assemble(setup: Setup, symbolic: SymbolicVerdicts, n: number, leftOver: readonly boolean[], overall: readonly OverallForm[], confirmed: boolean): Ultraviolet {
+  const t = symbolic.terms[n];
+  const { exponents } = setup.list.terms[n];
+  const nestedIn = setup.list.terms.flatMap((inner, m) => (leftOver[m] && isProperPart(inner.exponents, exponents) ? [inner.name] : []));
+  return { verdict: t.verdict, conditional: t.conditional, power: t.power, log: t.log, nested: nestedIn.length > 0, nestedIn, overall, confirmed };
+}
+
+function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][number], local: boolean): string {
+  const name = setup.list.terms[n].name;
+  if (!local) return `What is left of ${name} after subtracting everything nested is neither a polynomial in p, k, E nor one of the kernels: no counterterm is offered.`;
+  const said = t.verdict === 'converges' ? 'it converges' : `it grows as L^${t.power}${t.log ? ` ln^${t.log} L` : ''}`;
+  return `Whether ${name} diverges is open: power counting says that ${said}, the numbers on a ladder of cutoffs do not bear it out.`;
+}
+
+function ladderWishes(symbolic: SymbolicVerdicts, dense: readonly boolean[]): LadderWishes {
+  const degree = Math.max(-1, ...symbolic.terms.map((t, n) => (dense[n] ? t.overallDegree : -1)));
+  const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
+  if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 16, steepest };
+  return { rungs: 11 + Math.ceil(degree / 2), energies: 1 + Math.floor(degree / 2), momenta: 2 + Math.floor(degree / 2), pointsPerPanel: 16, steepest };
+}
+
+/** Walks the ladder with the bare series: contacts against their exact values, everything else by its growth. */
+function confirm({ contacts, terms }: SymbolicVerdicts, ladder: Ladder, shouldStop: () => boolean): boolean[] {
+  const exact = contacts ? contactsOnLadder(contacts, ladder) : [];
+  const last = ladder.externals.length - 1;
+  return terms.map((t, n) => {
+    if (shouldStop()) return false;
+    ladder.step(n);
+    if (t.contact) return contactAgrees(contacts!, exact[n]!, ladder, n);
+    if (t.verdict === 'oscillates') return true;
+    return growsAs(ladder.cutoffs, ladder.values(n, 0, 0, last), t.verdict === 'diverges' ? { power: t.power!, log: t.log! } : null);
+  });
+}
+
+/** Walks the ladder again with every nested divergence subtracted minimally, contacts exactly and the others as fitted on the way. */
+function fitDense(
+  setup: Setup,
+  symbolic: SymbolicVerdicts,
+  ladder: Ladder,
+  dense: readonly boolean[],
+  exact: ReturnType<typeof contactOverall> | readonly [],
+  fitted: (FittedOverall | null)[],
+  shouldStop: () => boolean,
+): void {
+  ladder.restart();
+  for (let n = 0; n < symbolic.terms.length && !shouldStop(); n++) {
+    ladder.step(n);
+    const t = symbolic.terms[n];
+    const wanted = dense[n] && t.overallDegree >= 0 && t.verdict === 'diverges';
+    if (wanted) fitted[n] = fitOverall(setup, ladder, n, t.overallDegree, Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)));
+    const forms: readonly Pick<FittedForm, 'form' | 'power' | 'log' | 'coefficient'>[] = exact[n]?.forms ?? fitted[n]?.forms ?? [];
+    if (!forms.length) continue;
+    const vertices = forms.map(f => ('interaction' in f.form ? setup.vertices[f.form.interaction] : formVertex(f.form)));
+    ladder.addCounterterm(n, L =>
+      forms.map((f, j): ScaledVertex => ({ vertex: vertices[j], strength: scaled(f.coefficient, -(L ** f.power) * Math.log(L) ** f.log) })),
+    );
+  }
+}
+
+const scaled = (c: Complex, s: number): Complex => ({ re: c.re * s, im: c.im * s });
+
+function withUniversality(setup: Setup, forms: readonly FittedForm[]): OverallForm[] {
+  return forms.map(f => {
+    const highest = Math.max(...forms.filter(g => g.form.text === f.form.text && g.power === 0).map(g => g.log));
+    return {
+      form: f.form.text,
+      power: f.power,
+      log: f.log,
+      coefficient: f.coefficient,
+      uncertainty: f.uncertainty,
+      universal: f.power === 0 && f.log === highest,
+      absorbedBy: absorber(setup, f.form),
+    };
+  });
+}
+
+function absorber(setup: Setup, form: FittedForm['form']): string | null {
+  if ('interaction' in form) return setup.vertices[form.interaction].name;
+  return setup.vertices.find(v => v.contact && isMultipleOf(v.contact, form.terms))?.name ?? null;
+}
