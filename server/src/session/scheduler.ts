@@ -20,11 +20,15 @@ interface OpenDocument {
   /** Null until this version of the text has been read. */
   checked: CheckedDocument | null;
   timer?: NodeJS.Timeout;
-  /** What reading the last version took, in ms. */
+  /** What reading the last version took, and when that was over, in ms. */
   cost: number;
+  readAt: number;
 }
 
-/** A document waits as long as its last reading took, so that a burst of keystrokes in a huge file is read once; at most this, in ms. */
+/**
+ * The first edit is read at once; one that follows sooner than this after a reading waits for as long as that reading took, so that
+ * a burst of keystrokes in a huge file is read once; but never longer than this, in ms.
+ */
 const longestWait = 50;
 
 const nothingOverridden = { cutoff: null, order: null };
@@ -51,8 +55,9 @@ export class Scheduler {
     const before = this.documents.get(uri);
     clearTimeout(before?.timer);
     this.documents.delete(uri);
-    const document: OpenDocument = { uri, version, text, checked: null, cost: before?.cost ?? 0 };
-    document.timer = setTimeout(() => this.check(document), Math.min(document.cost, longestWait));
+    const document: OpenDocument = { uri, version, text, checked: null, cost: before?.cost ?? 0, readAt: before?.readAt ?? -Infinity };
+    const isBurst = performance.now() - document.readAt < longestWait;
+    document.timer = setTimeout(() => this.check(document), isBurst ? Math.min(document.cost, longestWait) : 0);
     this.documents.set(uri, document);
   }
 
@@ -88,7 +93,8 @@ export class Scheduler {
     clearTimeout(document.timer);
     const start = performance.now();
     const checked = checkSymbolic(document.text, this.settings.defaults, nothingOverridden, this.cache);
-    document.cost = performance.now() - start;
+    document.readAt = performance.now();
+    document.cost = document.readAt - start;
     this.publish(document, checked);
     this.evaluateNext();
     return checked;
