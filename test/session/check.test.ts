@@ -49,7 +49,7 @@ describe('verdicts at once', () => {
 
 describe('everything', () => {
   test('budget and progress are handed on', () => {
-    vi.mocked(analyse).mockImplementation((spec, options) => {
+    vi.mocked(analyse).mockImplementation((_spec, options) => {
       options.progress?.(0.5, 'halfway');
       return results(`${options.budget} ${options.full}`);
     });
