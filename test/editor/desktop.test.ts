@@ -11,14 +11,15 @@ if (!executable) {
 }
 
 test.skipIf(!executable)('every sample shows in a desktop editor what the command line reports', async () => {
-  const workspace = mkdtempSync(join(tmpdir(), 'tare-desktop-'));
+  const folder = mkdtempSync(join(tmpdir(), 'tare-desktop-'));
+  const workspace = join(folder, 'workspace');
   fillWorkspace(workspace);
   const status = await runTests({
     vscodeExecutablePath: executable,
     extensionDevelopmentPath: root,
     extensionTestsPath: await packInsideSuite(),
-    launchArgs: [workspace, '--disable-extensions', '--disable-workspace-trust'],
+    launchArgs: [workspace, '--disable-extensions', '--disable-workspace-trust', '--no-sandbox', `--user-data-dir=${join(folder, 'user')}`],
   });
   expect(status).toBe(0);
-  rmSync(workspace, { recursive: true });
+  rmSync(folder, { recursive: true });
 });
