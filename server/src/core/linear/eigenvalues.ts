@@ -37,7 +37,7 @@ export function largestEigenvalues(operator: Operator, n: number, steps: number,
   const values = hessenbergEigenvalues(matrix).sort((x, y) => modulus(y) - modulus(x));
   const residuals = values.map(value => closing * lastComponent(matrix, value));
   const scale = modulus(values[0] ?? { re: 0, im: 0 });
-  return { values: values.filter((v, j) => j === 0 || residuals[j] <= tolerance * scale), residual: residuals[0] ?? 0 };
+  return { values: values.filter((_, j) => j === 0 || residuals[j] <= tolerance * scale), residual: residuals[0] ?? 0 };
 }
 
 /** Fixed, without symmetry, so that no eigenvector is missed and every run gives the same bytes. */

@@ -70,13 +70,13 @@ function bisect(f: (x: number) => number, from: number, to: number): number {
   return (from + to) / 2;
 }
 
-/** A divisor's zero may be lifted by the numerator, as in sin(q)/q. */
+/** A divisor's zero may be lifted by the numerator, as in sin(q)/q: then the kernel does not grow a thousandfold between these distances. */
 function growsAt(kernel: (x: Float64Array, p: number | null) => Float64Array, root: number, p: number | null): boolean {
-  const [far, near] = [1e-3, 1e-6].map(d => {
+  const [far, near] = [1e-9, 1e-12].map(d => {
     const values = kernel(Float64Array.of(root * (1 + d), root * (1 - d)), p);
     return Math.max(Math.abs(values[0]), Math.abs(values[1]));
   });
-  return !(near < 20 * far);
+  return !(near < 100 * far);
 }
 
 const round = (x: number): string => String(Number(x.toPrecision(4)));

@@ -9,7 +9,9 @@ interface Panel extends Estimate {
 }
 
 /** Bisections after which a panel that still carries the error is taken to sit on a singularity. */
-const DEEPEST = 45;
+const DEEPEST = 110;
+/** The share of the integral that sits there is compared with that so many bisections earlier. */
+const LOOK_BACK = 20;
 
 /**
  * ∫f over [from, to]; `to` may be Infinity (then x = from + t/(1 - t)). Bisects the panel with the largest error.
@@ -39,11 +41,18 @@ export function integrate(f: (x: number) => number, from: number, to: number, li
       { from: worst.from, to: middle, depth: worst.depth + 1, ...kronrod(f, worst.from, middle) },
       { from: middle, to: worst.to, depth: worst.depth + 1, ...kronrod(f, middle, worst.to) },
     ];
+    if (worst.depth > LOOK_BACK && halves.some(half => !Number.isFinite(half.value))) {
+      // Bisection has run into a point where f is infinite.
+      panels.push(worst);
+      return outcome(shares[worst.depth] > 0.5 * shares[worst.depth - LOOK_BACK] ? 'divergent' : 'budgetExhausted');
+    }
     panels.push(...halves);
     evaluations += 2 * KRONROD_POINTS;
     const deepest = halves[0].error > halves[1].error ? halves[0] : halves[1];
     shares[deepest.depth] = Math.max(shares[deepest.depth] ?? 0, deepest.abs);
-    if (deepest.depth >= DEEPEST) return outcome(shares[DEEPEST] > 0.5 * shares[DEEPEST - 10] ? 'divergent' : 'budgetExhausted');
+    const { depth } = deepest;
+    const atRoundOff = depth > LOOK_BACK && (deepest.from + deepest.to) / 2 - deepest.from < 4e-16 * Math.abs(deepest.to);
+    if (depth >= DEEPEST || atRoundOff) return outcome(shares[depth] > 0.5 * shares[depth - LOOK_BACK] ? 'divergent' : 'budgetExhausted');
   }
 }
 

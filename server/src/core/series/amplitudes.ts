@@ -73,7 +73,7 @@ export class CutoffGrid {
 /** The series at one cutoff: bare, and with the counterterms the model declares. */
 export function seriesAtCutoff(at: CutoffGrid, points: readonly OnShellPoint[], laws: readonly StrengthLaw[]): CutoffResult {
   const { setup, cutoff } = at;
-  const problems = points.map(point => weightsAt(at, point.E, true, []));
+  const problems = points.map(point => onShellWeights(at, point));
   const bare = runBare(at, problems);
   if (setup.counterterms.length === 0) {
     const amplitudes = points.map((point, j) => onShell(setup, cutoff, problems[j], point, bare.map(blocks => blocks[j])));
@@ -86,6 +86,12 @@ export function seriesAtCutoff(at: CutoffGrid, points: readonly OnShellPoint[], 
     renormalised: points.map((point, j) => onShell(setup, cutoff, problems[j], point, run.standing.map(blocks => blocks[j]))),
     strengths: run.strengths,
   };
+}
+
+/** The problem of one on-shell point; at threshold, where the propagator has no pole, the amplitude at p itself. */
+export function onShellWeights(at: CutoffGrid, { p, E }: OnShellPoint): LoopWeights {
+  const weights = weightsAt(at, E, true, []);
+  return weights.externals.length ? weights : weightsAt(at, E, false, [p]);
 }
 
 function weightsAt({ setup, grid }: CutoffGrid, E: number, onShell: boolean, others: readonly number[]): LoopWeights {
@@ -138,7 +144,7 @@ function amplitudeAt(chain: GridChain, n: number, all: readonly LoopWeights[], p
   return chain.amplitude(n, problem, nearest(externals, row * point.momentum), nearest(externals, column * point.momentum));
 }
 
-function nearest(externals: readonly number[], momentum: number): number {
+export function nearest(externals: readonly number[], momentum: number): number {
   let best = 0;
   externals.forEach((k, j) => {
     if (Math.abs(k - momentum) < Math.abs(externals[best] - momentum)) best = j;

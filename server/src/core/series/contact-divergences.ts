@@ -85,8 +85,8 @@ export function contactsWithOverall(setting: ContactSetting): (boolean | null)[]
   return chain.map((grids, n) => grids && found[n]);
 }
 
-/** What is left of each contact monomial once all that is nested has been subtracted minimally, logarithms as ln(L / 1 unit). */
-export function contactOverall(setting: ContactSetting): ({ forms: OverallDivergence[]; local: boolean } | null)[] {
+/** What is left of each contact monomial once all that is nested has been subtracted minimally, logarithms as ln(L / scale). */
+export function contactOverall(setting: ContactSetting, scale = 1): ({ forms: OverallDivergence[]; local: boolean } | null)[] {
   const { ring, kinematics, size } = setting;
   const highestE = Math.floor(ring.highest / Math.max(1, propagatorFall(kinematics)));
   const vertexE = Math.max(0, ...setting.vertices.flatMap(v => v ?? []).map(t => t.e));
@@ -96,7 +96,7 @@ export function contactOverall(setting: ContactSetting): ({ forms: OverallDiverg
   const found: (readonly Grid[] | null)[] = [];
   contactChain(setting.list, setting.vertices, points, ring, size, (n, remainder) => {
     if (setting.list.terms[n].factors === 1) return null;
-    const counterterms = remainder.map(grid => minimalCounterterm(grid, ring, 1));
+    const counterterms = remainder.map(grid => minimalCounterterm(grid, ring, scale));
     found[n] = counterterms;
     return counterterms.some(grid => grid.some(c => c)) ? counterterms : null;
   });

@@ -30,12 +30,12 @@ interface Samples {
 }
 
 /**
- * What grows in R_n (nested divergences already subtracted on the ladder) as forms with coefficients: the growth is fitted at each energy and
+ * What grows in R_n (nested divergences already subtracted on the ladder) as forms with coefficients, logarithms as ln(L/scale): fitted at each energy and
  * pair of external momenta, then the coefficients as polynomials of the dimension that power counting leaves them, or as a kernel of the model.
  */
-export function fitOverall(setup: Setup, ladder: Ladder, n: number, degree: number, logs: number): FittedOverall {
+export function fitOverall(setup: Setup, ladder: Ladder, n: number, degree: number, scale: number, logs: number): FittedOverall {
   const { growing, falling } = candidates(setup, degree, logs, ladder.cutoffs.length);
-  const samples = sampleGrowth(ladder, n, growing, falling);
+  const samples = sampleGrowth(ladder, n, scale, growing, falling);
   if (!samples) return { forms: [], local: false };
   const largest = (s: Samples) => Math.max(...s.values.flat(2).map(modulus));
   const lastCutoff = ladder.cutoffs[ladder.cutoffs.length - 1];
@@ -69,14 +69,14 @@ function candidates(setup: Setup, degree: number, logs: number, rungs: number): 
   return { growing, falling };
 }
 
-function sampleGrowth(ladder: Ladder, n: number, growing: readonly Growth[], falling: readonly Growth[]): Samples[] | null {
+function sampleGrowth(ladder: Ladder, n: number, scale: number, growing: readonly Growth[], falling: readonly Growth[]): Samples[] | null {
   const samples = growing.map(growth => ({ growth, values: ladder.energies.map(() => ladder.externals.map(() => [] as Complex[])), shift: 0 }));
   for (let e = 0; e < ladder.energies.length; e++) {
     for (let row = 0; row < ladder.externals.length; row++) {
       for (let column = 0; column < ladder.externals.length; column++) {
         const y = ladder.values(n, e, row, column);
-        const re = fitGrowth(ladder.cutoffs, y.map(v => v.re), growing, falling);
-        const im = fitGrowth(ladder.cutoffs, y.map(v => v.im), growing, falling);
+        const re = fitGrowth(ladder.cutoffs, y.map(v => v.re), growing, falling, scale);
+        const im = fitGrowth(ladder.cutoffs, y.map(v => v.im), growing, falling, scale);
         if (!re || !im) return null;
         samples.forEach((s, j) => {
           s.values[e][row].push({ re: re.coefficients[j], im: im.coefficients[j] });

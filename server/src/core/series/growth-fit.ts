@@ -71,14 +71,14 @@ export interface Growth {
   readonly log: number;
 }
 
-/** Coefficients of the wanted growths, fitted together with terms that fall off; and how far they move when the lowest cutoff is dropped. */
-export function fitGrowth(cutoffs: readonly number[], y: readonly number[], growing: readonly Growth[], falling: readonly Growth[]): { coefficients: number[]; shift: number[] } | null {
+/** Coefficients of the wanted growths L^a ln^b(L/scale), fitted together with terms that fall off; and how far they move when the lowest cutoff is dropped. */
+export function fitGrowth(cutoffs: readonly number[], y: readonly number[], growing: readonly Growth[], falling: readonly Growth[], scale = 1): { coefficients: number[]; shift: number[] } | null {
   const all = [...growing, ...falling];
   const solve = (from: number): number[] | null => {
     const unit = cutoffs[from];
     const highest = Math.max(0, ...growing.map(g => g.power));
     // Each row in units of the fastest growth, so that every cutoff counts alike.
-    const rows = cutoffs.slice(from).map(L => all.map(g => (L / unit) ** (g.power - highest) * Math.log(L) ** g.log));
+    const rows = cutoffs.slice(from).map(L => all.map(g => (L / unit) ** (g.power - highest) * Math.log(L / scale) ** g.log));
     const rhs = y.slice(from).map((v, j) => v * (cutoffs[from + j] / unit) ** -highest);
     return leastSquares(rows, rhs)?.map((c, j) => c * unit ** -all[j].power) ?? null;
   };

@@ -6,6 +6,8 @@ import { contactOverall, contactsWithOverall } from './contact-divergences';
 import { fitOverall, type FittedForm, type FittedOverall } from './dense-overall';
 import { growsAs } from './growth-fit';
 import type { ScaledVertex } from './grid-chain';
+import type { StrengthLaw } from './contact-declared';
+import { fittedStrengths, minimalCounterterms } from './declared-strengths';
 import { buildLadder, type Ladder, type LadderWishes } from './ladder';
 import { isProperPart } from './monomials';
 import type { Setup } from './setup';
@@ -15,8 +17,8 @@ import { formVertex } from './form-vertex';
 /** Ultraviolet answers for every monomial, with whatever else has to be said. */
 export interface UltravioletResults {
   readonly terms: readonly Ultraviolet[];
-  /** Fitted forms of the monomials that are no contacts, for their minimal counterterms. */
-  readonly fitted: readonly (FittedOverall | null)[];
+  /** Strengths of the declared minimal counterterms of monomials that are no contacts. */
+  readonly strengths: readonly StrengthLaw[];
   readonly remarks: readonly Remark[];
 }
 
@@ -35,7 +37,9 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   const fitted: (FittedOverall | null)[] = symbolic.terms.map(() => null);
   const ladder = buildLadder(setup, ladderWishes(symbolic, dense));
   const confirmed = confirm(symbolic, ladder, shouldStop);
-  if (symbolic.terms.some((t, n) => dense[n] && t.overallDegree >= 0)) fitDense(setup, symbolic, ladder, dense, exact, fitted, shouldStop);
+  const fits = symbolic.terms.some((t, n) => dense[n] && t.overallDegree >= 0);
+  if (fits) fitDense(setup, symbolic, ladder, dense, exact, fitted, 1, shouldStop);
+  const strengths = fits ? denseStrengths(setup, symbolic, ladder, dense, fitted, shouldStop) : [];
   const forms = symbolic.terms.map((_, n): OverallForm[] => {
     const list: readonly FittedForm[] = exact[n]?.forms.map(f => ({ ...f, uncertainty: 1e-10 * Math.hypot(f.coefficient.re, f.coefficient.im) })) ?? fitted[n]?.forms ?? [];
     return withUniversality(setup, list);
@@ -47,7 +51,7 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
     if (t.verdict !== 'undecided' && !t.tooSoft && !agrees) remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, local) });
     return assemble(setup, symbolic, n, leftOver, forms[n], agrees);
   });
-  return { terms, fitted, remarks };
+  return { terms, strengths, remarks };
 }
 
 function assemble(setup: Setup, symbolic: SymbolicVerdicts, n: number, leftOver: readonly boolean[], overall: readonly OverallForm[], confirmed: boolean): Ultraviolet {
@@ -92,6 +96,7 @@ function fitDense(
   dense: readonly boolean[],
   exact: ReturnType<typeof contactOverall> | readonly [],
   fitted: (FittedOverall | null)[],
+  scale: number,
   shouldStop: () => boolean,
 ): void {
   ladder.restart();
@@ -99,14 +104,31 @@ function fitDense(
     ladder.step(n);
     const t = symbolic.terms[n];
     const wanted = dense[n] && t.overallDegree >= 0 && t.verdict === 'diverges';
-    if (wanted) fitted[n] = fitOverall(setup, ladder, n, t.overallDegree, Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)));
+    if (wanted) fitted[n] = fitOverall(setup, ladder, n, t.overallDegree, scale, Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)));
     const forms: readonly Pick<FittedForm, 'form' | 'power' | 'log' | 'coefficient'>[] = exact[n]?.forms ?? fitted[n]?.forms ?? [];
     if (!forms.length) continue;
     const vertices = forms.map(f => ('interaction' in f.form ? setup.vertices[f.form.interaction] : formVertex(f.form)));
     ladder.addCounterterm(n, L =>
-      forms.map((f, j): ScaledVertex => ({ vertex: vertices[j], strength: scaled(f.coefficient, -(L ** f.power) * Math.log(L) ** f.log) })),
+      forms.map((f, j): ScaledVertex => ({ vertex: vertices[j], strength: scaled(f.coefficient, -(L ** f.power) * Math.log(L / scale) ** f.log) })),
     );
   }
+}
+
+/** The declared minimal counterterms of monomials that are no contacts: from the fit with logarithms of L over the scale each of them names. */
+function denseStrengths(
+  setup: Setup,
+  symbolic: SymbolicVerdicts,
+  ladder: Ladder,
+  dense: readonly boolean[],
+  atUnit: readonly (FittedOverall | null)[],
+  shouldStop: () => boolean,
+): StrengthLaw[] {
+  const wanted = setup.list.terms.flatMap((_, n) => (dense[n] ? minimalCounterterms(setup, n).map(c => ({ n, scale: c.spec.scheme.at })) : []));
+  return [...new Set(wanted.map(w => w.scale))].flatMap(scale => {
+    const fitted = [...atUnit];
+    if (scale !== 1) fitDense(setup, symbolic, ladder, dense, symbolic.contacts ? contactOverall(symbolic.contacts, scale) : [], fitted, scale, shouldStop);
+    return [...new Set(wanted.filter(w => w.scale === scale).map(w => w.n))].flatMap(n => (fitted[n] ? fittedStrengths(setup, n, fitted[n]!, scale) : []));
+  });
 }
 
 const scaled = (c: Complex, s: number): Complex => ({ re: c.re * s, im: c.im * s });

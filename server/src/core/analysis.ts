@@ -1,0 +1,204 @@
+import { judge } from './expectations';
+import type { ModelSpec } from './model/spec';
+import type { ConvergenceResult, ModelResults, ObservablesResult, Remark, SumResult, TermResult, Ultraviolet } from './results';
+import { bindingEnergies, convergenceAt, fullAmplitude, potentialParts } from './scattering/solution';
+import { lowEnergy } from './scattering/low-energy';
+import { CutoffGrid, type OnShellPoint } from './series/amplitudes';
+import { cost } from './series/cost';
+import {
+  byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation,
+} from './series/evaluation';
+import { onShellPoints } from './series/points';
+import { setUp, type Setup } from './series/setup';
+import { cancelledBy, declaredContacts, renormalisedConverges, statuses } from './series/statuses';
+import { fullUltraviolet, symbolicUltraviolet } from './series/ultraviolet';
+import { symbolicVerdicts } from './series/verdicts';
+import { infraredVerdicts } from './series/infrared';
+
+export interface AnalysisOptions {
+  /** Polled often; where it says true the analysis ends with `Cancelled`. */
+  shouldStop(): boolean;
+  /** Evaluations (kernel elements and products) that one model may cost. */
+  readonly budget: number;
+  /** Also the non-perturbative solution where nothing in the model asks for it. */
+  readonly full: boolean;
+  /** `done` from 0 to 1. */
+  progress?(done: number, what: string): void;
+}
+
+/** Thrown by `analyse` soon after `shouldStop` says so. */
+export class Cancelled extends Error {}
+
+/** Verdicts by power counting: fast, nothing confirmed by numbers yet. */
+export function symbolicResults(spec: ModelSpec): ModelResults {
+  const { setup, remarks } = setUp(spec);
+  if (!setup) return nothing(spec, remarks);
+  const symbolic = symbolicVerdicts(setup);
+  const terms = symbolicUltraviolet(setup, symbolic);
+  const declared = declaredContacts(setup, symbolic);
+  const status = statuses(setup, symbolic, terms, declared, null);
+  return {
+    ...nothing(spec, [...remarks, ...symbolic.remarks, ...declared.remarks]),
+    terms: setup.list.terms.map((_, n) => termResult(setup, n, terms[n], status[n], [], 'converges')),
+    couplings: couplingResults(setup, null),
+  };
+}
+
+/** Everything about a model: verdicts with forms and their confirmation, amplitudes, counterterm strengths, convergence, expectations. */
+export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults {
+  const { setup, remarks: lowering } = setUp(spec);
+  if (!setup) return nothing(spec, lowering);
+  const stop = () => {
+    if (options.shouldStop()) throw new Cancelled();
+    return false;
+  };
+  const symbolic = symbolicVerdicts(setup);
+  const declared = declaredContacts(setup, symbolic);
+  const asked = onShellPoints(setup);
+  const remarks: Remark[] = [...lowering, ...symbolic.remarks, ...declared.remarks, ...asked.remarks];
+  const needed = cost(setup);
+  if (needed > options.budget) {
+    const message = `The numbers of this model would take about ${needed.toPrecision(2)} evaluations and ${options.budget.toPrecision(2)} are allowed: a lower order, fewer cutoffs or fewer momenta make it smaller.`;
+    return { ...symbolicResults(spec), remarks: [...remarks, { code: 'budget', message, subject: null }] };
+  }
+  options.progress?.(0, 'divergences');
+  const ultraviolet = fullUltraviolet(setup, symbolic, stop);
+  stop();
+  const laws = [...(declared.scheme?.strengths ?? []), ...ultraviolet.strengths];
+  const dense = setup.counterterms.length && symbolic.terms.some((t, n) => !t.contact || !declared.scheme?.growth[n]) ? renormalisedConverges(setup, laws, stop) : null;
+  const terms = ultraviolet.terms.map((t): Ultraviolet => (t.confirmed || t.verdict === 'undecided' ? t : { ...t, verdict: 'undecided', power: null, log: null }));
+  const status = statuses(setup, symbolic, terms, declared, dense);
+  options.progress?.(0.3, 'amplitudes');
+  const points = asked.points;
+  const evaluation = points.length
+    ? evaluateSeries(setup, points, laws, done => {
+        stop();
+        options.progress?.(0.3 + 0.5 * done, 'amplitudes along the scan of the cutoff');
+      })
+    : null;
+  options.progress?.(0.8, 'convergence of the series');
+  const infrared = infraredVerdicts(setup);
+  const results: TermResult[] = setup.list.terms.map((_, n) => {
+    const values = evaluation ? valuesOf(setup, evaluation, n).slice(0, asked.reported) : [];
+    const one = termResult(setup, n, terms[n], status[n], values, infrared.verdicts[n]);
+    const scan = evaluation && scanOf(evaluation, n);
+    return scan ? { ...one, scan } : one;
+  });
+  const solution = solve(setup, evaluation, points.slice(0, asked.reported), options, stop);
+  const expectations = judge(spec.expectations, {
+    terms: results,
+    convergenceAt: point => solution.convergence(asked.find(point)),
+    driftAt: point => {
+      const at = points.indexOf(asked.find(point)!);
+      return evaluation && at >= 0 ? driftOf(setup, evaluation, at) : null;
+    },
+    fullAt: point => solution.full(asked.find(point)),
+    observables: solution.observables,
+    dimension: spec.dimension,
+    partialWave: spec.wave.kind === 'angular' ? spec.wave.number : 0,
+  });
+  return {
+    terms: results,
+    sum: evaluation ? sums(setup, evaluation, points.slice(0, asked.reported), solution.wanted ? solution.full : null) : [],
+    series: points.slice(0, asked.reported).map(p => solution.convergence(p)!),
+    counterterms: evaluation ? countertermResults(setup, evaluation) : [],
+    couplings: couplingResults(setup, evaluation),
+    observables: solution.observables,
+    expectations,
+    remarks: [...remarks, ...ultraviolet.remarks, ...infrared.remarks],
+  };
+}
+
+function termResult(
+  setup: Setup,
+  n: number,
+  ultraviolet: Ultraviolet,
+  status: TermResult['status'],
+  values: TermResult['values'],
+  infrared: TermResult['infrared']['verdict'],
+): TermResult {
+  const { name, exponents, order } = setup.list.terms[n];
+  return { monomial: name, exponents, order, ultraviolet, infrared: { verdict: infrared }, status, cancelledBy: status === 'cancelled' ? cancelledBy(setup, n) : [], values };
+}
+
+function scanOf(evaluation: Evaluation, n: number): TermResult['scan'] | null {
+  const usable = evaluation.scan.filter(s => Number.isFinite(s.bare[0][n].forward.re) && Number.isFinite(s.renormalised[0][n].forward.re));
+  if (!usable.length) return null;
+  return { p: evaluation.points[0].p, cutoff: usable.map(s => s.cutoff), bare: usable.map(s => s.bare[0][n].forward), renormalised: usable.map(s => s.renormalised[0][n].forward) };
+}
+
+function sums(setup: Setup, evaluation: Evaluation, points: readonly OnShellPoint[], full: ReturnType<typeof solve>['full'] | null): SumResult[] {
+  return points.flatMap((point, j): SumResult[] => {
+    const { orders, values } = byOrder(setup, evaluation.at.renormalised[j]);
+    if (values.some(v => !Number.isFinite(v.re) || !Number.isFinite(v.im))) return [];
+    const solved = full?.(point);
+    const beyond = solved
+      ? {
+          full: solved.forward,
+          ...(solved.phaseShift === null ? {} : { phaseShift: solved.phaseShift }),
+          ...(solved.transmission === null ? {} : { transmission: solved.transmission, reflection: solved.reflection! }),
+        }
+      : {};
+    const scanned = evaluation.scan.length ? { drift: driftOf(setup, evaluation, j) } : {};
+    return [{ p: point.p, E: point.E, orders, byOrder: values, ...beyond, ...scanned }];
+  });
+}
+
+/** The full solution and the eigenvalues, each computed when first asked for. */
+function solve(setup: Setup, evaluation: Evaluation | null, points: readonly OnShellPoint[], options: AnalysisOptions, stop: () => void) {
+  const { spec } = setup;
+  const momenta = [...points, ...(evaluation?.points ?? [])].map(p => p.p);
+  const grid = momenta.length ? new CutoffGrid(setup, spec.cutoff.value, momenta, 12) : null;
+  const parts = grid && evaluation ? potentialParts(grid, evaluation.at.strengths) : [];
+  const wanted = options.full || spec.expectations.some(e => e.kind === 'observable');
+  const memo = <T>(compute: (point: OnShellPoint) => T) => {
+    const known = new Map<OnShellPoint, T>();
+    return (point: OnShellPoint | null): T | null => {
+      if (!point || !grid) return null;
+      if (!known.has(point)) {
+        stop();
+        known.set(point, compute(point));
+      }
+      return known.get(point)!;
+    };
+  };
+  const convergence = memo((point): ConvergenceResult => convergenceAt(grid!, point));
+  const full = memo(point => {
+    const solved = fullAmplitude(grid!, parts, point);
+    return Number.isFinite(solved.forward.re) ? { ...solved, p: point.p } : null;
+  });
+  return { wanted, convergence, full, observables: wanted && grid ? observablesOf(grid, parts, setup) : null };
+}
+
+function observablesOf(grid: CutoffGrid, parts: ReturnType<typeof potentialParts>, setup: Setup): ObservablesResult | null {
+  const low = lowEnergy(grid, parts, Math.min(setup.momentum, grid.cutoff / 10) / 20);
+  const real = parts.every(p => p.vertex.element.real && p.strength.im === 0);
+  const bound = real && setup.kinematics.threshold > -Infinity ? bindingEnergies(grid, parts) : null;
+  if (!low && !bound) return null;
+  const finite = low && Number.isFinite(low.scatteringLength) && Number.isFinite(low.scatteringLengthError);
+  const range = low && low.effectiveRange !== null && Number.isFinite(low.effectiveRange) && Number.isFinite(low.effectiveRangeError);
+  return {
+    ...(finite ? { scattering_length: low.scatteringLength } : {}),
+    ...(range ? { effective_range: low.effectiveRange! } : {}),
+    ...(bound ? { binding_energies: bound } : {}),
+    definition: low?.definition ?? 'binding energies from the threshold',
+    uncertainties: {
+      ...(finite ? { scattering_length: low.scatteringLengthError } : {}),
+      ...(range ? { effective_range: low.effectiveRangeError } : {}),
+      ...(bound ? { binding_energies: bound.map(e => 1e-9 * e) } : {}),
+    },
+  };
+}
+
+function nothing(spec: ModelSpec, remarks: readonly Remark[]): ModelResults {
+  return {
+    terms: [],
+    sum: [],
+    series: [],
+    counterterms: [],
+    couplings: spec.couplings.map(({ name, value, dimension }) => ({ name, value, dimension })),
+    observables: null,
+    expectations: spec.expectations.map(() => ({ text: '', holds: null, measured: 'not evaluated' })),
+    remarks,
+  };
+}

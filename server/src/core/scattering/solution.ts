@@ -1,0 +1,87 @@
+import type { Complex } from '../algebra/expression';
+import type { ConvergenceResult } from '../results';
+import { nearest, onShellWeights, type CutoffGrid, type OnShellPoint, type Strength } from '../series/amplitudes';
+import type { ScaledVertex } from '../series/grid-chain';
+import { loopWeights } from '../series/loop-weights';
+import { amplitudeFromStandingWave, boundStateDeterminant, standingWave } from './full';
+import { potentialMatrix } from './potential';
+import { weinbergEigenvalues } from './weinberg';
+
+const ONE: Complex = { re: 1, im: 0 };
+
+/** The interactions with, where they are given, the counterterms at their strengths at this cutoff. */
+export function potentialParts(at: CutoffGrid, strengths: readonly Strength[]): ScaledVertex[] {
+  return [...at.setup.vertices.map(vertex => ({ vertex, strength: ONE })), ...strengths.map(s => ({ vertex: s.counterterm.vertex, strength: s.value }))];
+}
+
+/** The non-perturbative amplitude at one on-shell momentum. */
+export interface FullAmplitude {
+  /** T(p, p), regulator of the legs included. */
+  readonly forward: Complex;
+  /** T(-p, p) in dimension 1 (full). */
+  readonly backward: Complex | null;
+  /** Degrees; null in dimension 1 (full). */
+  readonly phaseShift: number | null;
+  /** Probabilities; null but in dimension 1 (full). */
+  readonly transmission: number | null;
+  readonly reflection: number | null;
+  /** tan δ = -ρ K of a single channel; NaN in dimension 1 (full). */
+  readonly tangent: number;
+}
+
+/** Solves T = V + V G T. Every wave but dimension 1 `full`: tan δ = -ρK; there t = 1 - 2iρT(p,p), r = -2iρT(-p,p). */
+export function fullAmplitude(at: CutoffGrid, parts: readonly ScaledVertex[], point: OnShellPoint): FullAmplitude {
+  const problem = onShellWeights(at, point);
+  const k = standingWave(potentialMatrix(at.kernels, parts, problem), problem);
+  const t = amplitudeFromStandingWave(k, problem.density);
+  const column = nearest(problem.externals, point.p);
+  const leg = at.setup.regulator.leg(point.p / at.cutoff) ** 2;
+  const scaled = (c: Complex): Complex => ({ re: c.re * leg, im: c.im * leg });
+  const forward = t[column][column];
+  const density = problem.density[column];
+  if (at.setup.kinematics.signed) {
+    const backward = t[nearest(problem.externals, -point.p)][column];
+    const transmission = (1 + 2 * density * forward.im) ** 2 + (2 * density * forward.re) ** 2;
+    const reflection = (2 * density) ** 2 * (backward.re ** 2 + backward.im ** 2);
+    return { forward: scaled(forward), backward: scaled(backward), phaseShift: null, transmission, reflection, tangent: NaN };
+  }
+  const tangent = -density * k[column][column].re;
+  return { forward: scaled(forward), backward: null, phaseShift: (Math.atan(tangent) * 180) / Math.PI, transmission: null, reflection: null, tangent };
+}
+
+/** Weinberg's eigenvalues of the interactions at one momentum and at this grid's cutoff. */
+export function convergenceAt(at: CutoffGrid, point: OnShellPoint): ConvergenceResult {
+  const problem = onShellWeights(at, point);
+  const { values, residual } = weinbergEigenvalues(potentialMatrix(at.kernels, potentialParts(at, []), problem), problem);
+  const largest = values[0] ?? { re: 0, im: 0 };
+  const size = Math.hypot(largest.re, largest.im);
+  const decided = Math.abs(size - 1) > residual && Number.isFinite(size);
+  return { p: point.p, E: point.E, largestEigenvalue: Number.isFinite(size) ? largest : null, converges: decided ? size < 1 : null, eigenvalues: Number.isFinite(size) ? values : [] };
+}
+
+/** Binding energies below threshold, deepest first: zeros of det(1 - V G(E)), looked for at 160 momenta κ from 1e-4 of the cutoff to twice it. */
+export function bindingEnergies(at: CutoffGrid, parts: readonly ScaledVertex[]): number[] {
+  const { kinematics, regulator } = at.setup;
+  const threshold = kinematics.threshold;
+  const value = (kappa: number) => {
+    const E = threshold - (kinematics.energy(kappa) - threshold);
+    const problem = loopWeights(kinematics, regulator, at.grid, { re: E, im: 0 }, false, [], 0);
+    const { sign, log } = boundStateDeterminant(potentialMatrix(at.kernels, parts, problem), problem);
+    return sign * Math.exp(Math.min(600, log));
+  };
+  const ladder = Array.from({ length: 160 }, (_, j) => at.cutoff * 1e-4 * 2e4 ** (j / 159));
+  const values = ladder.map(value);
+  const found: number[] = [];
+  for (let j = ladder.length - 2; j >= 0; j--) {
+    if (values[j] > 0 === values[j + 1] > 0) continue;
+    let [low, high] = [ladder[j], ladder[j + 1]];
+    const below = values[j] > 0;
+    for (let n = 0; n < 60 && high - low > 1e-12 * high; n++) {
+      const middle = (low + high) / 2;
+      if (value(middle) > 0 === below) low = middle;
+      else high = middle;
+    }
+    found.push(kinematics.energy((low + high) / 2) - threshold);
+  }
+  return found;
+}
