@@ -10,10 +10,18 @@ export function nearest(word: string, candidates: Iterable<string>): string | nu
   let bestDistance = allowedDistance(word) + 1;
   for (const candidate of candidates) {
     if (candidate === word) continue;
-    const distance = candidate.toLowerCase() === word.toLowerCase() ? 0.5 : editDistance(word, candidate, bestDistance);
-    if (distance < bestDistance) [best, bestDistance] = [candidate, distance];
+    const distance = candidate.toLowerCase() === word.toLowerCase() ? 0.5 : editDistance(word, candidate, Math.ceil(bestDistance) + 1);
+    const nearer = distance === bestDistance && best !== null && letterDistance(word, candidate) < letterDistance(word, best);
+    if (distance < bestDistance || nearer) [best, bestDistance] = [candidate, distance];
   }
   return best;
+}
+
+/** Settles ties: `c3` is nearer to `c1` than to `c0`. */
+function letterDistance(a: string, b: string): number {
+  let sum = 0;
+  for (let i = 0; i < Math.min(a.length, b.length); i++) sum += Math.abs(a.charCodeAt(i) - b.charCodeAt(i));
+  return sum;
 }
 
 /** "; did you mean `c1`?", or nothing. */

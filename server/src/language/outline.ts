@@ -5,7 +5,7 @@ import { parseStatement } from './parse';
 import { cut, type Piece } from './pieces';
 import type { ParsedStatement, Remark, StatementBody, Word } from './syntax';
 import { tokenize } from './tokens';
-import { reservedWords, type ReservedWord } from './words';
+import type { ReservedWord } from './words';
 
 /** A statement in its place in the text. */
 export interface Statement<B extends StatementBody = StatementBody> {
@@ -111,7 +111,7 @@ class Outliner {
     const span = { start: first.startOffset, end: first.startOffset + first.image.length };
     const meant = first.payload === undefined ? null : misspelt(first.payload as string);
     if (meant !== null) return this.remark(misspeltStatement(meant, first.image, second, span), piece.start);
-    const words = this.open === null ? '`model`, `const` or `use`' : reservedWords.slice(3).map(word => `\`${word}\``).join(', ');
+    const words = this.open === null ? '`model`, `const` or `use`' : 'a word such as `coupling` or `interaction`';
     this.remark({ code: 'syntax', span, message: `\`${shown(first.image)}\` begins no statement; one begins with ${words}.` }, piece.start);
   }
 

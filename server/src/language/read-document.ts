@@ -38,18 +38,24 @@ function viewOf(text: string, file: Outline, reporter: Reporter): FileView {
 }
 
 function checkVariant(block: ModelBlock, file: Outline, view: FileView, defaults: Defaults, overrides: Overrides): ModelInText {
-  const problems = nameProblems(block, file, view.open);
-  const merged = withBase(block, file, []);
-  const own = { ...block, problems: [...block.problems, ...problems] };
-  return checkModel(own, { ...merged, problems: own.problems }, view, defaults, overrides);
+  const problems = [...block.problems, ...nameProblems(block, file, view.open)];
+  const base = withBase(block, file, []);
+  // A variant of an unknown model may hold anything: nothing is missing in it and no name is wrong.
+  const seen = base === null ? { ...view, open: true } : view;
+  return checkModel({ ...block, problems }, base ?? block, seen, defaults, overrides);
 }
 
-/** A model that varies an unknown one may hold anything: nothing is missing in it. */
-function withBase(block: ModelBlock, file: Outline, under: readonly ModelBlock[]): ModelBlock {
-  if (block.from === null || under.includes(block)) return block;
+/** The model with the statements of what it varies; null where that is unknown or leads back to itself. */
+function withBase(block: ModelBlock, file: Outline, under: readonly ModelBlock[]): ModelBlock | null {
+  if (block.from === null) return block;
   const base = file.models.find(model => model.name.name === block.from!.name);
-  return base === undefined ? block : merge(withBase(base, file, [...under, block]), block);
+  if (base === undefined || base === block || under.includes(base) || under.length > deepestVariant) return null;
+  const whole = withBase(base, file, [...under, block]);
+  return whole && merge(whole, block);
 }
+
+/** Variants of variants: enough for anyone, and short of the stack. */
+const deepestVariant = 100;
 
 function nameProblems(block: ModelBlock, file: Outline, open: boolean): SourceDocument['problems'] {
   const reporter = new Reporter(block.span);

@@ -35,12 +35,15 @@ export interface FileView {
  */
 export function checkModel(block: ModelBlock, merged: ModelBlock, file: FileView, defaults: Defaults, overrides: Overrides): ModelInText {
   const reporter = new Reporter(block.span);
-  for (const problem of block.problems) reporter.add(problem);
+  reporter.problems.push(...block.problems);
   reportRepeated(merged, reporter);
   const { model, mass, sound } = openModel(merged, file, reporter);
   reportRepeatedNames(merged, reporter);
   const spec = readModel(model, mass, file, defaults, overrides);
-  const problems = sound.units ? reporter.problems : reporter.problems.filter(({ code }) => code !== 'dimension' || block.problems.length === 0);
+  // Where the units themselves are wrong, no other dimension can be judged.
+  const units = statementsOf(merged, 'units')[0]?.span;
+  const judged = ({ code, span }: Problem) => code !== 'dimension' || (units !== undefined && span.start >= units.start && span.end <= units.end);
+  const problems = sound.units ? reporter.problems : reporter.problems.filter(judged);
   const healthy = sound.frame && !problems.some(({ severity }) => severity === 'error') && merged.broken.length === 0;
   return { name: block.name.name, places: placesOf(file.text, block), problems: inOrder(problems), spec: healthy ? spec : null };
 }

@@ -38,7 +38,7 @@ export function readFrame(block: ModelBlock, reporter: Reporter): Frame {
   const waveStatement = statementsOf(block, 'wave')[0];
   const wave = waveStatement === undefined || !spaceSound ? null : readWave(waveStatement, space, reporter);
   const numbers = waveStatement?.body.wave;
-  const channels = numbers !== undefined && 'numbers' in numbers ? numbers.numbers.length : 1;
+  const channels = numbers !== undefined && 'numbers' in numbers ? new Set(numbers.numbers.map(({ value }) => value)).size : 1;
   return {
     system: unitsSound ? system : { energy: 'MeV', length: 'fm' },
     unitsSound,
