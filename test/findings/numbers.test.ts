@@ -26,16 +26,20 @@ describe('a number for people', () => {
 
   test('is within its own uncertainty of the value, whatever the two are', () => {
     fc.assert(
-      fc.property(fc.double({ min: -1e6, max: 1e6, noNaN: true }), fc.double({ min: 1e-12, max: 10, noNaN: true }), (value, uncertainty) => {
-        const shown = formatNumber(value, uncertainty);
-        expect(shown).not.toMatch(/NaN|undefined|null|Infinity|e\+/);
-        const [, mantissa, digit, power = 'e0'] = /^(−?[\d.]+)\((\d)\)(e-?\d+)?$/.exec(shown) ?? [];
-        if (mantissa === undefined) return;
-        const decimals = mantissa.split('.')[1]?.length ?? 0;
-        const bound = Number(`${digit}e${-decimals}`) * Number(`1${power}`);
-        expect(bound).toBeGreaterThanOrEqual(uncertainty * (1 - 1e-9));
-        expect(Math.abs(Number(mantissa.replace('−', '-') + power) - value)).toBeLessThanOrEqual(bound / 2 + 1e-15);
-      }),
+      fc.property(
+        fc.double({ min: -1e6, max: 1e6, noNaN: true }),
+        fc.double({ min: 1e-12, max: 10, noNaN: true }),
+        (value, uncertainty) => {
+          const shown = formatNumber(value, uncertainty);
+          expect(shown).not.toMatch(/NaN|undefined|null|Infinity|e\+/);
+          const [, mantissa, digit, power = 'e0'] = /^(−?[\d.]+)\((\d)\)(e-?\d+)?$/.exec(shown) ?? [];
+          if (mantissa === undefined) return;
+          const decimals = mantissa.split('.')[1]?.length ?? 0;
+          const bound = Number(`${digit}e${-decimals}`) * Number(`1${power}`);
+          expect(bound).toBeGreaterThanOrEqual(uncertainty * (1 - 1e-9));
+          expect(Math.abs(Number(mantissa.replace('−', '-') + power) - value)).toBeLessThanOrEqual(bound / 2 + 1e-15);
+        },
+      ),
     );
   });
 });
@@ -55,7 +59,11 @@ describe('a complex number for people', () => {
 
 test('lists are read as a sentence', () => {
   expect([listed([]), listed(['a']), listed(['a', 'b']), listed(['a', 'b', 'c']), listed(['a', 'b', 'c', 'd'], 2)]).toEqual([
-    '', 'a', 'a and b', 'a, b and c', 'a, b and 2 more',
+    '',
+    'a',
+    'a and b',
+    'a, b and c',
+    'a, b and 2 more',
   ]);
   expect([counted(1, 'error'), counted(0, 'model')]).toEqual(['1 error', '0 models']);
 });

@@ -47,14 +47,22 @@ describe('where findings stand', () => {
   test('a series that diverges is told once, on the word', () => {
     const document = checkedWire({
       results: results => ({
-        ...results, terms: [], sum: [],
-        series: [0.05, 0.1, 0.2, 0.3, 0.4, 0.5].map(p => ({ p, E: p * p / 2, largestEigenvalue: { re: 0, im: -0.2 / p }, converges: p > 0.3, eigenvalues: [] })),
+        ...results,
+        terms: [],
+        sum: [],
+        series: [0.05, 0.1, 0.2, 0.3, 0.4, 0.5].map(p => ({
+          p,
+          E: (p * p) / 2,
+          largestEigenvalue: { re: 0, im: -0.2 / p },
+          converges: p > 0.3,
+          eigenvalues: [],
+        })),
       }),
     });
     expect(marked(document)).toBe(`\
   series to 3 at p = 0.05 .. 1.0 (12 points)
   ^^^^^^ information series-diverges series`);
-    expect(findingsOf(document)[0]!.message).toBe(
+    expect(findingsOf(document)[0].message).toBe(
       'The series does not converge at p = 0.05, p = 0.1, p = 0.2 and p = 0.3: the largest eigenvalue of G₀V has modulus 4 at p = 0.05, and it must be below 1. More orders do not improve the sum there.',
     );
   });
@@ -63,13 +71,19 @@ describe('where findings stand', () => {
 describe('what an ultraviolet finding says', () => {
   const messageOf = (overall: ReturnType<typeof grows>[]): string => {
     const terms = [termOf('twist^2', [0, 2], { ultraviolet: diverges(overall), status: 'uncancelled' })];
-    return findingsOf(checkedWire({ cancelled: false, results: results => ({ ...results, terms, expectations: [] }) }))[0]!.message;
+    return findingsOf(checkedWire({ cancelled: false, results: results => ({ ...results, terms, expectations: [] }) }))[0].message;
   };
 
   test.each([
     [[grows('1', 'bump')], 'twist^2 diverges linearly, as L^1, when L is lifted; the coupling of `bump` can absorb it.'],
-    [[grows('p^2+k^2', null, 0, 1)], 'twist^2 diverges logarithmically, as ln L, when L is lifted; a new counterterm of the form p^2+k^2 is needed.'],
-    [[grows('1', 'bump', 3), grows('1', 'bump', 1)], 'twist^2 diverges cubically, as L^3, when L is lifted; the coupling of `bump` can absorb it.'],
+    [
+      [grows('p^2+k^2', null, 0, 1)],
+      'twist^2 diverges logarithmically, as ln L, when L is lifted; a new counterterm of the form p^2+k^2 is needed.',
+    ],
+    [
+      [grows('1', 'bump', 3), grows('1', 'bump', 1)],
+      'twist^2 diverges cubically, as L^3, when L is lifted; the coupling of `bump` can absorb it.',
+    ],
     [
       [grows('1', 'bump', 3), grows('p^2+k^2'), grows('E')],
       'twist^2 diverges cubically, as L^3, when L is lifted; the coupling of `bump` can absorb the form 1; new counterterms of the forms p^2+k^2 and E are needed.',
@@ -81,7 +95,10 @@ describe('what an ultraviolet finding says', () => {
       cancelled: false,
       results: results => ({
         ...results,
-        terms: [...results.terms.slice(0, 5), termOf('bump*twist^2', [1, 2], { ultraviolet: diverges([grows('1', 'bump', 2)], ['twist^2']), status: 'uncancelled' })],
+        terms: [
+          ...results.terms.slice(0, 5),
+          termOf('bump*twist^2', [1, 2], { ultraviolet: diverges([grows('1', 'bump', 2)], ['twist^2']), status: 'uncancelled' }),
+        ],
       }),
     });
     const found = findingsOf(document).find(({ subject }) => subject === 'bump*twist^2')!;
@@ -93,22 +110,35 @@ describe('what an ultraviolet finding says', () => {
     ]);
     const at = found.related.map(({ span }) => document.document.text.slice(span.start, span.end));
     expect(at).toEqual(['twist', 'bump', 'bump', '']);
-    expect(document.document.text.slice(found.related[3]!.span.start)).toBe('}\n');
+    expect(document.document.text.slice(found.related[3].span.start)).toBe('}\n');
   });
 });
 
 describe('before the numbers are there', () => {
   const symbolic = (cancelled: boolean): ReturnType<typeof checkedWire> =>
     checkedWire({
-      cancelled, stage: 'symbolic',
+      cancelled,
+      stage: 'symbolic',
       results: results => ({
-        ...results, sum: [], series: [], counterterms: [], expectations: [],
-        terms: results.terms.map(term => ({ ...term, values: [], ultraviolet: { ...term.ultraviolet, overall: [] }, status: term.ultraviolet.verdict === 'diverges' ? null : term.status })),
+        ...results,
+        sum: [],
+        series: [],
+        counterterms: [],
+        expectations: [],
+        terms: results.terms.map(term => ({
+          ...term,
+          values: [],
+          ultraviolet: { ...term.ultraviolet, overall: [] },
+          status: term.ultraviolet.verdict === 'diverges' ? null : term.status,
+        })),
       }),
     });
 
   test('an error shows at once, and nothing is called undecided', () => {
-    expect(findingsOf(symbolic(false)).map(({ code, severity }) => `${severity} ${code}`)).toEqual(['error uv-divergence', 'information uv-nested']);
+    expect(findingsOf(symbolic(false)).map(({ code, severity }) => `${severity} ${code}`)).toEqual([
+      'error uv-divergence',
+      'information uv-nested',
+    ]);
   });
 
   test('a file with its counterterms stays quiet', () => {
@@ -120,9 +150,10 @@ test('a counterterm whose inner divergence has none leaves something non-local',
   const document = checkedWire({
     spec: spec => ({ ...spec, counterterms: spec.counterterms.map(one => ({ ...one, cancels: [[1, 2]] })) }),
     results: results => ({
-      ...results, expectations: [],
+      ...results,
+      expectations: [],
       terms: [
-        { ...results.terms[4]!, status: 'uncancelled' },
+        { ...results.terms[4], status: 'uncancelled' },
         termOf('bump*twist^2', [1, 2], { ultraviolet: diverges([grows('1', 'bump', 2)], ['twist^2']), status: 'uncancelled' }),
       ],
     }),

@@ -17,6 +17,11 @@ export function annotated(text: string, findings: readonly Finding[]): string {
 }
 
 /** The text with the edits of a quick fix made. */
-export function edited(text: string, edits: readonly { readonly span: { readonly start: number; readonly end: number }; readonly text: string }[]): string {
-  return [...edits].sort((a, b) => b.span.start - a.span.start).reduce((left, { span, text: put }) => left.slice(0, span.start) + put + left.slice(span.end), text);
+export function edited(
+  text: string,
+  edits: readonly { readonly span: { readonly start: number; readonly end: number }; readonly text: string }[],
+): string {
+  return [...edits]
+    .sort((a, b) => b.span.start - a.span.start)
+    .reduce((left, { span, text: put }) => left.slice(0, span.start) + put + left.slice(span.end), text);
 }

@@ -29,7 +29,8 @@ function check(paths: readonly string[], { json, cutoff, order, full }: Flags): 
 
 const width = (): number => (process.stdout.isTTY ? Math.max(narrowest, Math.min(process.stdout.columns || 80, widest)) : 100);
 
-const palette = (): typeof plainPalette => (process.stdout.isTTY && !process.env['NO_COLOR'] && process.env['TERM'] !== 'dumb' ? colourPalette : plainPalette);
+const palette = (): typeof plainPalette =>
+  process.stdout.isTTY && !process.env['NO_COLOR'] && process.env['TERM'] !== 'dumb' ? colourPalette : plainPalette;
 
 const checkHelp = `
 For each model: the monomials of its Dyson series, whether they diverge as the cutoff is lifted, how fast,

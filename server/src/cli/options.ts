@@ -17,6 +17,7 @@ export function readCutoff(text: string): number {
 /** `--order`: a whole number from 1 to `highestOrder`. */
 export function readOrder(text: string): number {
   const value = Number(text);
-  if (!/^\d+$/.test(text) || value < 1 || value > highestOrder) throw new InvalidArgumentError(`Write a whole number from 1 to ${highestOrder}.`);
+  if (!/^\d+$/.test(text) || value < 1 || value > highestOrder)
+    throw new InvalidArgumentError(`Write a whole number from 1 to ${highestOrder}.`);
   return value;
 }

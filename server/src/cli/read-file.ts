@@ -31,13 +31,28 @@ export function readModelFile(path: string): ReadFile {
   }
   const sha256 = createHash('sha256').update(bytes).digest('hex');
   if (bytes.length > mostBytes) {
-    return { unusable: unusable(path, sha256, '', `The file has ${(bytes.length / 1e6).toFixed(1)} MB; a model file may have at most ${mostBytes / 1e6} MB. Is it the right one?`) };
+    return {
+      unusable: unusable(
+        path,
+        sha256,
+        '',
+        `The file has ${(bytes.length / 1e6).toFixed(1)} MB; a model file may have at most ${mostBytes / 1e6} MB. Is it the right one?`,
+      ),
+    };
   }
   const decoded = decodeUtf8(bytes);
   if ('text' in decoded) return { text: decoded.text, sha256 };
-  const byte = `0x${bytes[decoded.badByte]!.toString(16).toUpperCase().padStart(2, '0')}`;
+  const byte = `0x${bytes[decoded.badByte].toString(16).toUpperCase().padStart(2, '0')}`;
   const guess = bytes.includes(0) ? 'It may be UTF-16, or no text at all.' : 'It may be in Latin-1.';
-  return { unusable: unusable(path, sha256, bytes.toString('utf8'), `The file is not in UTF-8: the byte ${byte} stands here. ${guess} Save it as UTF-8.`, decoded.offset) };
+  return {
+    unusable: unusable(
+      path,
+      sha256,
+      bytes.toString('utf8'),
+      `The file is not in UTF-8: the byte ${byte} stands here. ${guess} Save it as UTF-8.`,
+      decoded.offset,
+    ),
+  };
 }
 
 function unusable(path: string, sha256: string | null, text: string, message: string, at = 0): CheckedFile {

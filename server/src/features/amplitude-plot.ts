@@ -20,7 +20,12 @@ export function amplitudePlot({ monomial, scan, ultraviolet, status }: TermResul
     description: `${amplitude} of ${monomial} at p = ${formatNumber(scan.p)}${momentumUnit(spec)} while ${spec.cutoff.name} runs over ${rangeInWords(scan.cutoff)}: bare from ${rangeInWords(bare)}${both ? `, renormalised from ${rangeInWords(renormalised)}` : ''}.${grows}`,
     ...against(scan.cutoff, spec),
     yLabel: `${amplitude}, ${monomial} at p = ${formatNumber(scan.p)}`,
-    curves: both ? [{ name: 'bare', y: bare }, { name: 'renormalised', y: renormalised }] : [{ name: 'amplitude', y: bare }],
+    curves: both
+      ? [
+          { name: 'bare', y: bare },
+          { name: 'renormalised', y: renormalised },
+        ]
+      : [{ name: 'amplitude', y: bare }],
   };
 }
 
@@ -46,7 +51,10 @@ export function runningPlot({ name, value, running }: CouplingResult, spec: Mode
     description: `Bare coupling ${name} while ${spec.cutoff.name} runs over ${rangeInWords(running.cutoff)}: from ${rangeInWords(running.value)}.`,
     ...against(running.cutoff, spec),
     yLabel: name,
-    curves: [{ name: 'bare', y: running.value }, { name: 'renormalised', y: running.value.map(() => value) }],
+    curves: [
+      { name: 'bare', y: running.value },
+      { name: 'renormalised', y: running.value.map(() => value) },
+    ],
   };
 }
 
@@ -71,8 +79,8 @@ export function seriesPlot(terms: readonly TermResult[], spec: ModelSpec): Plot 
   const first = terms[0]?.scan;
   if (!first || terms.some(({ scan }) => scan?.cutoff.join() !== first.cutoff.join())) return null;
   const total = (pick: 'bare' | 'renormalised', part: 're' | 'im'): number[] =>
-    first.cutoff.map((_, index) => terms.reduce((sum, { scan }) => sum + scan![pick][index]![part], 0));
-  const part = livelier(first.cutoff.map((_, index) => ({ re: total('bare', 're')[index]!, im: total('bare', 'im')[index]! })));
+    first.cutoff.map((_, index) => terms.reduce((sum, { scan }) => sum + scan![pick][index][part], 0));
+  const part = livelier(first.cutoff.map((_, index) => ({ re: total('bare', 're')[index], im: total('bare', 'im')[index] })));
   const [bare, renormalised] = [total('bare', part), total('renormalised', part)];
   const amplitude = `${part === 're' ? 'Re' : 'Im'} T`;
   return {
@@ -80,6 +88,9 @@ export function seriesPlot(terms: readonly TermResult[], spec: ModelSpec): Plot 
     description: `${amplitude} of the sum at p = ${formatNumber(first.p)}${momentumUnit(spec)} while ${spec.cutoff.name} runs over ${rangeInWords(first.cutoff)}: bare from ${rangeInWords(bare)}, renormalised from ${rangeInWords(renormalised)}.`,
     ...against(first.cutoff, spec),
     yLabel: `${amplitude}, sum at p = ${formatNumber(first.p)}`,
-    curves: [{ name: 'bare', y: bare }, { name: 'renormalised', y: renormalised }],
+    curves: [
+      { name: 'bare', y: bare },
+      { name: 'renormalised', y: renormalised },
+    ],
   };
 }

@@ -24,12 +24,16 @@ export function targetAt({ document, models }: CheckedDocument, offset: number):
   return declared(model, offset) ?? used(model, offset);
 }
 
-const kinds = [['interaction', 'interactions'], ['coupling', 'couplings'], ['counterterm', 'counterterms']] as const;
+const kinds = [
+  ['interaction', 'interactions'],
+  ['coupling', 'couplings'],
+  ['counterterm', 'counterterms'],
+] as const;
 
 function declared(model: Evaluated, offset: number): Target | null {
   for (const [kind, list] of kinds) {
     const index = model.source.places[list].findIndex(({ name }) => within(name, offset));
-    if (index >= 0) return { kind, index, span: model.source.places[list][index]!.name, model };
+    if (index >= 0) return { kind, index, span: model.source.places[list][index].name, model };
   }
   return null;
 }
@@ -45,8 +49,12 @@ function used(model: Evaluated, offset: number): Target | null {
   return index < 0 ? null : { kind: vertex ? 'interaction' : 'coupling', index, span, model };
 }
 
-const statementsOf = ({ couplings, interactions, counterterms, cutoff }: ModelInText['places']): NamedPlace[] =>
-  [...couplings, ...interactions, ...counterterms, ...(cutoff ? [cutoff] : [])];
+const statementsOf = ({ couplings, interactions, counterterms, cutoff }: ModelInText['places']): NamedPlace[] => [
+  ...couplings,
+  ...interactions,
+  ...counterterms,
+  ...(cutoff ? [cutoff] : []),
+];
 
 /** Between the name of a counterterm's form or its `cancels`, and its `subtract`. */
 function inVertexPlace({ text, source }: Evaluated, { start }: Span): boolean {

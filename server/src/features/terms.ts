@@ -14,7 +14,9 @@ export function termsMarkdown(model: Evaluated, terms: readonly TermResult[]): s
   const first = terms.flatMap(({ values }) => values.slice(0, 1))[0];
   const at = first ? ` at ${pointInWords(first, model.spec)}` : '';
   const head = ['monomial', 'order', 'when the cutoff is lifted', ...(first ? [`bare T${at}`, 'renormalised'] : [])];
-  const rows = terms.slice(0, most).map(term => [code(term.monomial), String(term.order), behaviour(model, term), ...(first ? valuesOf(term) : [])]);
+  const rows = terms
+    .slice(0, most)
+    .map(term => [code(term.monomial), String(term.order), behaviour(model, term), ...(first ? valuesOf(term) : [])]);
   const more = terms.length > most ? `\n\n${terms.length - most} more monomials are in the report of the command line.` : '';
   return [table(head, rows) + more, leftovers(model, terms)].filter(Boolean).join('\n\n');
 }
@@ -28,9 +30,17 @@ function valuesOf({ values: [value] }: TermResult): string[] {
 function behaviour({ spec, complete }: Evaluated, { ultraviolet, status, cancelledBy, infrared }: TermResult): string {
   const growth = growthFormula(ultraviolet, spec.cutoff.name);
   const conditional = ultraviolet.conditional ? ' (k with −k)' : '';
-  const settled = status === 'cancelled' ? `, cancelled${cancelledBy.length > 0 ? ` by ${listed(cancelledBy.map(code))}` : ''}` : status === 'uncancelled' ? ', **not cancelled**' : '';
-  const verdict = { converges: 'converges', oscillates: `oscillates${growth && `, ${growth}`}`, undecided: 'undecided', diverges: growth }[ultraviolet.verdict];
-  const nested = ultraviolet.nested && ultraviolet.overall.length === 0 && complete ? `, through ${listed(ultraviolet.nestedIn.map(code), 3)}` : '';
+  const settled =
+    status === 'cancelled'
+      ? `, cancelled${cancelledBy.length > 0 ? ` by ${listed(cancelledBy.map(code))}` : ''}`
+      : status === 'uncancelled'
+        ? ', **not cancelled**'
+        : '';
+  const verdict = { converges: 'converges', oscillates: `oscillates${growth && `, ${growth}`}`, undecided: 'undecided', diverges: growth }[
+    ultraviolet.verdict
+  ];
+  const nested =
+    ultraviolet.nested && ultraviolet.overall.length === 0 && complete ? `, through ${listed(ultraviolet.nestedIn.map(code), 3)}` : '';
   return `${verdict}${conditional}${nested}${settled}${infrared.verdict === 'diverges' ? ', infrared divergent' : ''}`;
 }
 

@@ -17,17 +17,21 @@ export const cutoffDependence: FindingRule = {
   raise: onResults((model): Draft[] => {
     if (!model.complete || divergences(model).some(({ open }) => open)) return [];
     const worst = model.results.sum.reduce<{ drift: number; p?: number; E: number } | null>(
-      (found, { drift, ...point }) => (typeof drift === 'number' && drift > (found?.drift ?? 0) ? { ...point, drift } : found), null);
+      (found, { drift, ...point }) => (typeof drift === 'number' && drift > (found?.drift ?? 0) ? { ...point, drift } : found),
+      null,
+    );
     if (!worst || !(worst.drift >= notable)) return [];
     const term = mover(model);
     const through = term ? `, most of it through ${term.monomial}` : '';
-    return [{
-      severity: model.spec.expectations.some(({ kind }) => kind === 'drift') ? 'warning' : 'information',
-      message: `The renormalised sum changes by ${formatNumber(Number((100 * worst.drift).toPrecision(2)))} % over the upper half of the scan at ${pointInWords(worst, model.spec)}${through}.`,
-      span: term ? placeOfMonomial(model, term.exponents) : model.source.places.name,
-      ...(term && { subject: term.monomial }),
-      ...(worst.p !== undefined && { p: worst.p }),
-    }];
+    return [
+      {
+        severity: model.spec.expectations.some(({ kind }) => kind === 'drift') ? 'warning' : 'information',
+        message: `The renormalised sum changes by ${formatNumber(Number((100 * worst.drift).toPrecision(2)))} % over the upper half of the scan at ${pointInWords(worst, model.spec)}${through}.`,
+        span: term ? placeOfMonomial(model, term.exponents) : model.source.places.name,
+        ...(term && { subject: term.monomial }),
+        ...(worst.p !== undefined && { p: worst.p }),
+      },
+    ];
   }),
 };
 

@@ -43,7 +43,8 @@ function kindOf(model: Evaluated, term: TermResult, hasOwn: boolean, open: boole
   return hasOwn && openInside ? 'nonlocal' : 'own';
 }
 
-export const sameMonomial = (a: Monomial, b: Monomial): boolean => a.length === b.length && a.every((exponent, index) => exponent === b[index]);
+export const sameMonomial = (a: Monomial, b: Monomial): boolean =>
+  a.length === b.length && a.every((exponent, index) => exponent === b[index]);
 
 /** The counterterms that a model declares for this very monomial. */
 export const countertermsFor = (model: Evaluated, monomial: Monomial): CountertermSpec[] =>
@@ -55,6 +56,11 @@ export function inside(model: Evaluated, { term }: Pick<Divergence, 'term'>): Fi
     const inner = termOf(model, monomial);
     if (!inner) return [];
     const growth = growthFormula(inner.ultraviolet, model.spec.cutoff.name);
-    return [{ span: placeOfMonomial(model, inner.exponents), message: `the loops of ${monomial} inside ${term.monomial} diverge by themselves${growth ? `, as ${growth}` : ''}` }];
+    return [
+      {
+        span: placeOfMonomial(model, inner.exponents),
+        message: `the loops of ${monomial} inside ${term.monomial} diverge by themselves${growth ? `, as ${growth}` : ''}`,
+      },
+    ];
   });
 }

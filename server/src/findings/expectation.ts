@@ -7,19 +7,34 @@ import { formatNumber, listed } from './words/numbers';
 /** An `expect` that does not hold. Stands on the statement; for `finite` it points at what diverges. */
 export const expectation: FindingRule = {
   code: 'expectation',
-  raise: onResults(model => model.results.expectations.flatMap((result, index): Draft[] => {
-    if (result.holds !== false) return [];
-    const about = model.spec.expectations[index];
-    const upTo = about?.kind === 'finite' ? about.to ?? model.spec.series.order : 0;
-    const growing = about?.kind === 'finite' ? divergences(model).filter(({ open, kind, term }) => open && kind !== 'nested' && term.order <= upTo) : [];
-    return [{
-      severity: 'error',
-      message: growing.length > 0 ? notFinite(result.text, growing.map(({ term }) => term.monomial)) : `\`expect ${result.text}\` does not hold${measured(result)}.`,
-      span: model.source.places.expectations[index]?.statement ?? model.source.places.name,
-      subject: result.text,
-      related: growing.slice(0, 8).map(({ term }) => ({ span: placeOfMonomial(model, term.exponents), message: `${term.monomial} is not cancelled` })),
-    }];
-  })),
+  raise: onResults(model =>
+    model.results.expectations.flatMap((result, index): Draft[] => {
+      if (result.holds !== false) return [];
+      const about = model.spec.expectations[index];
+      const upTo = about?.kind === 'finite' ? (about.to ?? model.spec.series.order) : 0;
+      const growing =
+        about?.kind === 'finite'
+          ? divergences(model).filter(({ open, kind, term }) => open && kind !== 'nested' && term.order <= upTo)
+          : [];
+      return [
+        {
+          severity: 'error',
+          message:
+            growing.length > 0
+              ? notFinite(
+                  result.text,
+                  growing.map(({ term }) => term.monomial),
+                )
+              : `\`expect ${result.text}\` does not hold${measured(result)}.`,
+          span: model.source.places.expectations[index]?.statement ?? model.source.places.name,
+          subject: result.text,
+          related: growing
+            .slice(0, 8)
+            .map(({ term }) => ({ span: placeOfMonomial(model, term.exponents), message: `${term.monomial} is not cancelled` })),
+        },
+      ];
+    }),
+  ),
 };
 
 const notFinite = (text: string, monomials: readonly string[]): string =>

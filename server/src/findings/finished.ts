@@ -6,5 +6,10 @@ export const docsOf = (code: FindingCode): string => `docs/findings.md#${code}`;
 
 /** A draft with its code, its model and its page. */
 export const finished = (code: FindingCode, model: string | null, draft: Draft): Finding => ({
-  code, model, docs: docsOf(code), related: [], fixes: [], ...draft,
+  code,
+  model,
+  docs: docsOf(code),
+  related: [],
+  fixes: [],
+  ...draft,
 });

@@ -26,9 +26,15 @@ function unremarked(model: Evaluated): Draft[] {
 
 const absent = (model: Evaluated, monomial: string | null) => termOf(model, monomial)?.values.filter(({ bare }) => bare === null) ?? [];
 
-const severity = (model: Evaluated, monomial: string | null): 'error' | 'warning' => (absent(model, monomial).length > 0 ? 'error' : 'warning');
+const severity = (model: Evaluated, monomial: string | null): 'error' | 'warning' =>
+  absent(model, monomial).length > 0 ? 'error' : 'warning';
 
 function where(model: Evaluated, monomial: string): string {
   const points = absent(model, monomial);
-  return points.length > 0 ? `, and it has no value at ${listed(points.map(point => pointInWords(point, model.spec)), 4)}` : '';
+  return points.length > 0
+    ? `, and it has no value at ${listed(
+        points.map(point => pointInWords(point, model.spec)),
+        4,
+      )}`
+    : '';
 }

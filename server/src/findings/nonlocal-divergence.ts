@@ -11,14 +11,18 @@ import { listed } from './words/numbers';
  */
 export const nonlocalDivergence: FindingRule = {
   code: 'nonlocal-divergence',
-  raise: onResults(model => divergences(model).filter(({ kind }) => kind === 'nonlocal').map(found => ({
-    severity: found.open ? ('error' as const) : ('information' as const),
-    message: sentence(model, found),
-    span: placeOfMonomial(model, found.term.exponents),
-    subject: found.term.monomial,
-    related: inside(model, found),
-    fixes: found.open ? fixesFor(model, found) : [],
-  }))),
+  raise: onResults(model =>
+    divergences(model)
+      .filter(({ kind }) => kind === 'nonlocal')
+      .map(found => ({
+        severity: found.open ? ('error' as const) : ('information' as const),
+        message: sentence(model, found),
+        span: placeOfMonomial(model, found.term.exponents),
+        subject: found.term.monomial,
+        related: inside(model, found),
+        fixes: found.open ? fixesFor(model, found) : [],
+      })),
+  ),
 };
 
 function sentence(model: Evaluated, { term: { monomial, ultraviolet } }: Divergence): string {

@@ -1,13 +1,15 @@
 import type { Remark } from '../core/results';
 import { placeOfSubject } from './places';
-import { onResults, termOf, type Draft, type Evaluated } from './rule';
+import { onResults, termOf, type Draft, type Evaluated, type FindingRule } from './rule';
 import type { Severity } from './finding';
 
 /** What the core remarked under `code`, each at its subject; a subject is spoken of once. */
-export const fromRemarks = (code: Remark['code'], severity: (model: Evaluated, remark: Remark) => Severity) =>
+export const fromRemarks = (code: Remark['code'], severity: (model: Evaluated, remark: Remark) => Severity): FindingRule['raise'] =>
   onResults(model => {
     const remarks = model.results.remarks.filter(remark => remark.code === code);
-    const first = remarks.filter((remark, index) => remarks.findIndex(other => other.subject === remark.subject && other.message === remark.message) === index);
+    const first = remarks.filter(
+      (remark, index) => remarks.findIndex(other => other.subject === remark.subject && other.message === remark.message) === index,
+    );
     return first.map((remark): Draft => ({
       severity: severity(model, remark),
       message: remark.message,

@@ -8,13 +8,21 @@ const remarked = fromRemarks('undecided', severityWhereOpen);
 /** The tool could not tell whether a monomial is finite, or whether an expectation holds. The core's own words where it has some. */
 export const undecided: FindingRule = {
   code: 'undecided',
-  raise: scope => [...remarked(scope), ...onResults(model => (model.complete ? [...openTerms(model), ...openExpectations(model)] : []))(scope)],
+  raise: scope => [
+    ...remarked(scope),
+    ...onResults(model => (model.complete ? [...openTerms(model), ...openExpectations(model)] : []))(scope),
+  ],
 };
 
 function openTerms(model: Evaluated): Draft[] {
   return model.results.terms
     .filter(({ status, monomial }) => status === null && !spokenOf(model, monomial))
-    .map(term => ({ severity: 'error', message: sentence(model, term), span: placeOfMonomial(model, term.exponents), subject: term.monomial }));
+    .map(term => ({
+      severity: 'error',
+      message: sentence(model, term),
+      span: placeOfMonomial(model, term.exponents),
+      subject: term.monomial,
+    }));
 }
 
 function sentence({ spec }: Evaluated, { monomial, ultraviolet }: TermResult): string {
@@ -35,4 +43,6 @@ function openExpectations(model: Evaluated): Draft[] {
 
 /** Whether the core has said why; a remark about nothing in particular explains everything that is open. */
 const spokenOf = ({ results }: Evaluated, subject: string): boolean =>
-  results.remarks.some(remark => (remark.subject === subject || remark.subject === null) && (remark.code === 'undecided' || remark.code === 'budget'));
+  results.remarks.some(
+    remark => (remark.subject === subject || remark.subject === null) && (remark.code === 'undecided' || remark.code === 'budget'),
+  );

@@ -12,7 +12,11 @@ import { listed } from './words/numbers';
  */
 export const uvDivergence: FindingRule = {
   code: 'uv-divergence',
-  raise: onResults(model => divergences(model).filter(({ kind }) => kind === 'own').flatMap(found => [onInteraction(model, found), ...onCounterterms(model, found)])),
+  raise: onResults(model =>
+    divergences(model)
+      .filter(({ kind }) => kind === 'own')
+      .flatMap(found => [onInteraction(model, found), ...onCounterterms(model, found)]),
+  ),
 };
 
 function onInteraction(model: Evaluated, found: Divergence): Draft {
@@ -48,20 +52,37 @@ function remedy(model: Evaluated, { term }: Divergence): string {
   const rest = forms.filter(({ absorbedBy }) => absorbedBy === null);
   const names = listed([...new Set(absorbed.map(({ absorbedBy }) => `\`${absorbedBy}\``))]);
   const many = new Set(absorbed.map(({ absorbedBy }) => absorbedBy)).size > 1;
-  const absorb = absorbed.length === 0 ? '' : `; ${many ? 'the couplings' : 'the coupling'} of ${names} can absorb ${rest.length > 0 ? formsInWords(absorbed) : 'it'}`;
+  const absorb =
+    absorbed.length === 0
+      ? ''
+      : `; ${many ? 'the couplings' : 'the coupling'} of ${names} can absorb ${rest.length > 0 ? formsInWords(absorbed) : 'it'}`;
   if (rest.length === 0) return absorb;
   return `${absorb}; ${rest.length === 1 ? 'a new counterterm' : 'new counterterms'} of ${formsInWords(rest)} ${rest.length === 1 ? 'is' : 'are'} needed`;
 }
 
-const formsInWords = (forms: readonly NeededForm[]): string => `the ${forms.length === 1 ? 'form' : 'forms'} ${listed(forms.map(({ form }) => form), 4)}`;
+const formsInWords = (forms: readonly NeededForm[]): string =>
+  `the ${forms.length === 1 ? 'form' : 'forms'} ${listed(
+    forms.map(({ form }) => form),
+    4,
+  )}`;
 
 /** The other interactions of the monomial, and those whose couplings can absorb it. */
 function partners({ source, spec }: Evaluated, { term }: Divergence): NonNullable<Draft['related']> {
   const present = term.exponents.flatMap((exponent, index) => (exponent > 0 ? [index] : []));
-  const others = present.slice(0, -1).map(index => ({ span: source.places.interactions[index]!.name, message: `\`${spec.interactions[index]!.name}\` takes part in ${term.monomial}` }));
+  const others = present.slice(0, -1).map(index => ({
+    span: source.places.interactions[index].name,
+    message: `\`${spec.interactions[index].name}\` takes part in ${term.monomial}`,
+  }));
   const absorbers = spec.interactions.flatMap(({ name }, index) => {
     const forms = term.ultraviolet.overall.filter(({ absorbedBy }) => absorbedBy === name).map(({ form }) => form);
-    return forms.length > 0 ? [{ span: source.places.interactions[index]!.name, message: `\`${name}\` has the form ${listed([...new Set(forms)])} and can absorb it` }] : [];
+    return forms.length > 0
+      ? [
+          {
+            span: source.places.interactions[index].name,
+            message: `\`${name}\` has the form ${listed([...new Set(forms)])} and can absorb it`,
+          },
+        ]
+      : [];
   });
   return [...others, ...absorbers];
 }
@@ -76,12 +97,16 @@ function onCounterterms(model: Evaluated, found: Divergence): Draft[] {
   const last = countertermsFor(model, found.term.exponents).at(-1);
   const { forms } = needOf(model, found.term);
   if (!found.open || !last || forms.length === 0) return [];
-  return [{
-    severity: 'error',
-    message: `\`${last.name}\` does not cancel all of ${found.term.monomial}: ${formsInWords(forms)} ${forms.length === 1 ? 'stays' : 'stay'}.`,
-    span: model.source.places.counterterms[model.spec.counterterms.indexOf(last)]!.name,
-    subject: last.name,
-    related: [{ span: placeOfMonomial(model, found.term.exponents), message: `${found.term.monomial} diverges through this interaction` }],
-    fixes: fixesFor(model, found),
-  }];
+  return [
+    {
+      severity: 'error',
+      message: `\`${last.name}\` does not cancel all of ${found.term.monomial}: ${formsInWords(forms)} ${forms.length === 1 ? 'stays' : 'stay'}.`,
+      span: model.source.places.counterterms[model.spec.counterterms.indexOf(last)].name,
+      subject: last.name,
+      related: [
+        { span: placeOfMonomial(model, found.term.exponents), message: `${found.term.monomial} diverges through this interaction` },
+      ],
+      fixes: fixesFor(model, found),
+    },
+  ];
 }

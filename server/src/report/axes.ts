@@ -11,9 +11,14 @@ export function padded(values: readonly number[]): [number, number] {
 
 /** At most nine round values on a logarithmic axis: 1, 2, 5 times powers of ten, or the powers alone. */
 export function logTicks([from, to]: readonly [number, number]): number[] {
-  const decades = Array.from({ length: Math.floor(Math.log10(to)) - Math.floor(Math.log10(from)) + 1 }, (_, n) => Math.floor(Math.log10(from)) + n);
+  const decades = Array.from(
+    { length: Math.floor(Math.log10(to)) - Math.floor(Math.log10(from)) + 1 },
+    (_, n) => Math.floor(Math.log10(from)) + n,
+  );
   const within = (steps: readonly number[]): number[] =>
-    decades.flatMap(decade => steps.map(step => Number(`${step}e${decade}`))).filter(value => value >= from * (1 - 1e-9) && value <= to * (1 + 1e-9));
+    decades
+      .flatMap(decade => steps.map(step => Number(`${step}e${decade}`)))
+      .filter(value => value >= from * (1 - 1e-9) && value <= to * (1 + 1e-9));
   const fine = within([1, 2, 5]);
   if (fine.length < 2) return [from, to];
   if (fine.length <= 9) return fine;

@@ -9,22 +9,36 @@ export function resultsJson(results: ModelResults | null): object {
     terms: terms.map(termJson),
     sum: sum.map(sumJson),
     series: series.map(({ p, E, largestEigenvalue, converges, eigenvalues }) => ({
-      ...momentum(p), E, largestEigenvalue: complex(largestEigenvalue), converges, eigenvalues: eigenvalues.map(complex),
+      ...momentum(p),
+      E,
+      largestEigenvalue: complex(largestEigenvalue),
+      converges,
+      eigenvalues: eigenvalues.map(complex),
     })),
     ...(counterterms.length > 0 && {
       counterterms: counterterms.map(({ name, cancels, at, cutoff, strength }) => ({
-        name, cancels, at: complex(at), ...(cutoff && { cutoff }), ...(strength && { strength: strength.map(complex) }),
+        name,
+        cancels,
+        at: complex(at),
+        ...(cutoff && { cutoff }),
+        ...(strength && { strength: strength.map(complex) }),
       })),
     }),
     ...(couplings.length > 0 && {
       couplings: couplings.map(({ name, value, dimension, running }) => ({
-        name, value, dimension, ...(running && { running: { cutoff: running.cutoff, value: running.value } }),
+        name,
+        value,
+        dimension,
+        ...(running && { running: { cutoff: running.cutoff, value: running.value } }),
       })),
     }),
     ...(observables && { observables }),
     ...(expectations.length > 0 && {
       expectations: expectations.map(({ text, holds, measured, value, wanted, tolerance }) => ({
-        text, holds, measured, ...given({ value, wanted, tolerance }),
+        text,
+        holds,
+        measured,
+        ...given({ value, wanted, tolerance }),
       })),
     }),
   };
@@ -83,6 +97,8 @@ const sumJson = ({ p, E, orders, byOrder, full, phaseShift, transmission, reflec
 const momentum = (p: number | undefined): object => given({ p });
 
 /** Without the keys that have no value. */
-const given = (values: Readonly<Record<string, number | null | undefined>>): object => Object.fromEntries(Object.entries(values).filter(([, value]) => value !== undefined));
+const given = (values: Readonly<Record<string, number | null | undefined>>): object =>
+  Object.fromEntries(Object.entries(values).filter(([, value]) => value !== undefined));
 
-const complex = (z: Complex | null): Complex | null => (z && Number.isFinite(z.re) && Number.isFinite(z.im) ? { re: z.re, im: z.im } : null);
+const complex = (z: Complex | null): Complex | null =>
+  z && Number.isFinite(z.re) && Number.isFinite(z.im) ? { re: z.re, im: z.im } : null;

@@ -57,7 +57,9 @@ function findingsJson(file: CheckedFile, index: number | null): object[] {
 function modelIndexOf({ checked }: CheckedFile, { model, span }: Finding): number | null {
   if (model === null || !checked) return null;
   const named = checked.models.flatMap(({ source }, index) => (source.name === model ? [index] : []));
-  const around = named.find(index => checked.models[index]!.source.places.model.start <= span.start && span.start <= checked.models[index]!.source.places.model.end);
+  const around = named.find(
+    index => checked.models[index].source.places.model.start <= span.start && span.start <= checked.models[index].source.places.model.end,
+  );
   return around ?? named[0] ?? null;
 }
 

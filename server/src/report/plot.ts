@@ -40,8 +40,8 @@ const drawableX = (x: number): boolean => x > 1 / largest && x < largest;
 
 /** The plot as SVG text: x logarithmic, y linear, transparent ground. Empty where fewer than two points can be drawn. */
 export function plotSvg(plot: Plot): string {
-  const usable = plot.x.filter((x, index) => drawableX(x) && plot.curves.some(({ y }) => drawable(y[index]!)));
-  const values = plot.curves.flatMap(({ y }) => y.filter((value, index) => drawable(value) && drawableX(plot.x[index]!)));
+  const usable = plot.x.filter((x, index) => drawableX(x) && plot.curves.some(({ y }) => drawable(y[index])));
+  const values = plot.curves.flatMap(({ y }) => y.filter((value, index) => drawable(value) && drawableX(plot.x[index])));
   if (new Set(usable).size < 2 || values.length === 0) return '';
   const x = scaleLog([Math.min(...usable), Math.max(...usable)], [frame.left, frame.right]);
   const y = scaleLinear(padded(values), [frame.bottom, frame.top]);
@@ -53,7 +53,7 @@ export function plotSvg(plot: Plot): string {
     `<path d="M${frame.left} ${frame.bottom}H${frame.right}" stroke="${ink}" fill="none"/>`,
     text((frame.left + frame.right) / 2, size.height - 8, 'middle', plot.xLabel),
     text(8, frame.top - 24, 'start', plot.yLabel),
-    ...(plot.mark && plot.mark.x >= x.domain()[0]! && plot.mark.x <= x.domain()[1]! ? [marker(x(plot.mark.x), plot.mark.label)] : []),
+    ...(plot.mark && plot.mark.x >= x.domain()[0] && plot.mark.x <= x.domain()[1] ? [marker(x(plot.mark.x), plot.mark.label)] : []),
     ...plot.curves.map((curve, index) => curvePath(curve, plot.x, x, y, index)),
     legend(plot.curves),
     '</svg>',
@@ -67,21 +67,28 @@ export function plotAddress(plot: Plot): string {
 }
 
 function curvePath({ y: values }: Curve, at: readonly number[], x: (v: number) => number, y: (v: number) => number, index: number): string {
-  const { colour, dash, width } = strokes[index % strokes.length]!;
-  const drawn = line<number>().defined((value, i) => drawable(value) && drawableX(at[i]!)).x((_, i) => x(at[i]!)).y(value => y(value)).digits(2);
+  const { colour, dash, width } = strokes[index % strokes.length];
+  const drawn = line<number>()
+    .defined((value, i) => drawable(value) && drawableX(at[i]))
+    .x((_, i) => x(at[i]))
+    .y(value => y(value))
+    .digits(2);
   return `<path d="${drawn(values) ?? ''}" fill="none" stroke="${colour}" stroke-width="${width}" stroke-linejoin="round" stroke-linecap="round"${dash && ` stroke-dasharray="${dash}"`}/>`;
 }
 
 function legend(curves: readonly Curve[]): string {
   let right = frame.right;
-  return [...curves.keys()].reverse().map(index => {
-    const { colour, dash, width } = strokes[index % strokes.length]!;
-    const name = curves[index]!.name;
-    const left = right - 6.2 * name.length - 34;
-    right = left - 8;
-    const top = frame.top - 28;
-    return `<path d="M${fixed(left)} ${top}h26" stroke="${colour}" stroke-width="${width}"${dash && ` stroke-dasharray="${dash}"`} fill="none"/>${text(left + 32, top + 4, 'start', name)}`;
-  }).join('');
+  return [...curves.keys()]
+    .reverse()
+    .map(index => {
+      const { colour, dash, width } = strokes[index % strokes.length];
+      const name = curves[index].name;
+      const left = right - 6.2 * name.length - 34;
+      right = left - 8;
+      const top = frame.top - 28;
+      return `<path d="M${fixed(left)} ${top}h26" stroke="${colour}" stroke-width="${width}"${dash && ` stroke-dasharray="${dash}"`} fill="none"/>${text(left + 32, top + 4, 'start', name)}`;
+    })
+    .join('');
 }
 
 const horizontal = (y: number, label: string): string =>

@@ -24,10 +24,10 @@ export class Lines {
     let [low, high] = [0, this.starts.length - 1];
     while (low < high) {
       const middle = Math.ceil((low + high) / 2);
-      if (this.starts[middle]! <= inside) low = middle;
+      if (this.starts[middle] <= inside) low = middle;
       else high = middle - 1;
     }
-    return { line: low, character: inside - this.starts[low]! };
+    return { line: low, character: inside - this.starts[low] };
   }
 
   range({ start, end }: Span): Range {
@@ -36,7 +36,7 @@ export class Lines {
 
   /** The line's text without its end. */
   line(index: number): string {
-    const end = index + 1 < this.starts.length ? this.starts[index + 1]! : this.text.length;
-    return this.text.slice(this.starts[index]!, end).replace(/(\r\n|\n|\r)$/, '');
+    const end = index + 1 < this.starts.length ? this.starts[index + 1] : this.text.length;
+    return this.text.slice(this.starts[index], end).replace(/(\r\n|\n|\r)$/, '');
   }
 }

@@ -28,7 +28,9 @@ export function findingText(file: CheckedFile, lines: Lines, finding: Finding, w
     return [`${at.line + 1}:${at.character + 1}`, other.message] as const;
   });
   const help = fixes.slice(0, 1).map(({ title }) => ['fix', title] as const);
-  const aside = [...further, ...help].flatMap(([label, words]) => hanging(label, harmless(words), width - indent.length).map(one => indent + palette.faint(one)));
+  const aside = [...further, ...help].flatMap(([label, words]) =>
+    hanging(label, harmless(words), width - indent.length).map(one => indent + palette.faint(one)),
+  );
   return [head, ...words, ...excerpt(file, lines, finding, width, paint, palette), ...aside];
 }
 
@@ -37,7 +39,14 @@ const hanging = (label: string, words: string, width: number): string[] =>
   wrapped(words, width - 8).map((line, index) => (index === 0 ? label : '').padEnd(6) + '  ' + line);
 
 /** The line with the place underlined; of a long line the part around the place. */
-function excerpt(file: CheckedFile, lines: Lines, { span }: Finding, width: number, paint: (text: string) => string, palette: Palette): string[] {
+function excerpt(
+  file: CheckedFile,
+  lines: Lines,
+  { span }: Finding,
+  width: number,
+  paint: (text: string) => string,
+  palette: Palette,
+): string[] {
   const start = lines.position(span.start);
   const line = lines.line(start.line);
   const number = String(start.line + 1).padStart(4);

@@ -16,7 +16,11 @@ export function modelText({ source, results }: CheckedModel, width: number, pale
   const { spec } = source;
   if (!spec || !results) return [name, `${indent}not evaluated: see the errors below`];
   const inner = width - indent.length;
-  const parts = [termRows(spec, results, inner, palette), countertermRows(spec, results, inner, palette), expectationRows(results, inner, palette)];
+  const parts = [
+    termRows(spec, results, inner, palette),
+    countertermRows(spec, results, inner, palette),
+    expectationRows(results, inner, palette),
+  ];
   const head = wrapped(headline(spec), inner).map(line => indent + palette.faint(line));
   return [name, ...head, ...parts.filter(rows => rows.length > 0).flatMap(rows => ['', ...rows.map(row => indent + row)])];
 }
@@ -59,7 +63,8 @@ function absorber({ ultraviolet: { verdict, overall, nestedIn } }: TermResult): 
 function status({ status: found, cancelledBy, infrared }: TermResult, palette: Palette): Cell {
   if (infrared.verdict === 'diverges') return { text: 'infrared divergent', paint: palette.warn };
   if (found === 'finite') return { text: 'finite', paint: palette.good };
-  if (found === 'cancelled') return { text: `cancelled${cancelledBy.length > 0 ? ` by ${listed(cancelledBy, 4)}` : ''}`, paint: palette.good };
+  if (found === 'cancelled')
+    return { text: `cancelled${cancelledBy.length > 0 ? ` by ${listed(cancelledBy, 4)}` : ''}`, paint: palette.good };
   return found === 'uncancelled' ? { text: 'not cancelled', paint: palette.bad } : { text: 'undecided', paint: palette.warn };
 }
 
@@ -75,7 +80,11 @@ function countertermRows(spec: ModelSpec, { counterterms }: ModelResults, width:
 function expectationRows({ expectations }: ModelResults, width: number, palette: Palette): string[] {
   const rows = expectations.map(({ text, holds, measured }): Cell[] => [
     { text: harmless(`expect ${text}`) },
-    holds === null ? { text: 'undecided', paint: palette.warn } : holds ? { text: 'holds', paint: palette.good } : { text: 'fails', paint: palette.bad },
+    holds === null
+      ? { text: 'undecided', paint: palette.warn }
+      : holds
+        ? { text: 'holds', paint: palette.good }
+        : { text: 'fails', paint: palette.bad },
     { text: measured, paint: palette.faint },
   ]);
   return aligned(rows, width, new Set());

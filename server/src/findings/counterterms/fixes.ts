@@ -20,9 +20,23 @@ export function fixesFor(model: Evaluated, divergence: Divergence): QuickFix[] {
 }
 
 /** Counterterms for everything that is not cancelled up to the model's order, in both schemes; none where nothing is missing. */
-export function fixesForAll(model: Evaluated): QuickFix[] {
-  const needs = divergences(model).filter(({ open }) => open).map(({ term }) => needOf(model, term)).filter(({ forms }) => forms.length > 0);
-  return variants(model, needs, false).map(plan => fix(model, plan, `Add all counterterms up to order ${model.spec.series.order}, subtract ${plan.scheme}`));
+export function fixesForAll(model: Evaluated): readonly QuickFix[] {
+  const known = all.get(model) ?? planForAll(model);
+  all.set(model, known);
+  return known;
+}
+
+/** Every finding of a model carries the same ones, so they are worked out once. */
+const all = new WeakMap<Evaluated, readonly QuickFix[]>();
+
+function planForAll(model: Evaluated): QuickFix[] {
+  const needs = divergences(model)
+    .filter(({ open }) => open)
+    .map(({ term }) => needOf(model, term))
+    .filter(({ forms }) => forms.length > 0);
+  return variants(model, needs, false).map(plan =>
+    fix(model, plan, `Add all counterterms up to order ${model.spec.series.order}, subtract ${plan.scheme}`),
+  );
 }
 
 interface Statement {
@@ -41,8 +55,9 @@ interface Plan {
 function variants(model: Evaluated, needs: readonly Need[], absorbing: boolean): Plan[] {
   if (needs.length === 0) return [];
   const { onShell, minimal } = schemesFor(model);
-  return [onShell, minimal].flatMap(scheme => plan(model, needs, scheme, absorbing) ?? []).filter((one, index, all) =>
-    all.findIndex(other => JSON.stringify(other.statements) === JSON.stringify(one.statements)) === index);
+  return [onShell, minimal]
+    .flatMap(scheme => plan(model, needs, scheme, absorbing) ?? [])
+    .filter((one, index, all) => all.findIndex(other => JSON.stringify(other.statements) === JSON.stringify(one.statements)) === index);
 }
 
 /** One statement for each form and scheme, in the order of the monomials; null where on-shell conditions cannot set the strengths. */
@@ -60,7 +75,7 @@ function plan(model: Evaluated, needs: readonly Need[], wished: Scheme, absorbin
       else if (!same.cancels.includes(term.monomial)) same.cancels.push(term.monomial);
     }
   }
-  return { statements, scheme: statements.every(one => one.scheme === statements[0]!.scheme) ? statements[0]!.scheme : wished.words };
+  return { statements, scheme: statements.every(one => one.scheme === statements[0].scheme) ? statements[0].scheme : wished.words };
 }
 
 function written({ form, absorbedBy }: NeededForm, absorbing: boolean): string {
@@ -81,14 +96,21 @@ function namesFor({ spec }: Evaluated): () => string {
 
 const fix = (model: Evaluated, { statements }: Plan, title: string): QuickFix => ({
   title,
-  edits: insertion(model, statements.map(({ name, form, cancels, scheme }) => `counterterm ${name}${form} cancels ${cancels.join(', ')} subtract ${scheme}`)),
+  edits: insertion(
+    model,
+    statements.map(({ name, form, cancels, scheme }) => `counterterm ${name}${form} cancels ${cancels.join(', ')} subtract ${scheme}`),
+  ),
   preferred: false,
 });
 
 function addTitle({ statements, scheme }: Plan, needs: readonly Need[]): string {
-  const monomials = listed(needs.map(({ term }) => term.monomial), 4);
+  const monomials = listed(
+    needs.map(({ term }) => term.monomial),
+    4,
+  );
   const [first] = statements;
-  const what = statements.length === 1 ? `counterterm ${first!.name}${first!.form}` : `counterterms ${listed(statements.map(({ name }) => name))}`;
+  const what =
+    statements.length === 1 ? `counterterm ${first.name}${first.form}` : `counterterms ${listed(statements.map(({ name }) => name))}`;
   return `Add ${what} for ${monomials}, subtract ${scheme}`;
 }
 

@@ -23,7 +23,7 @@ export function evaluate(form: Expr, points: readonly Point[]): Complex[] {
   const im = new Float64Array(points.length);
   const column = (pick: (point: Point) => number): Float64Array => Float64Array.from(points, pick);
   compile(form)({ p: column(({ p }) => p), k: column(({ k }) => k), E: column(({ E }) => E) }, re, im);
-  return Array.from(re, (value, index) => ({ re: value, im: im[index]! }));
+  return Array.from(re, (value, index) => ({ re: value, im: im[index] }));
 }
 
 /** Whether the rows are linearly independent (Gaussian elimination, pivots above 1e-9 of the row's size). */
@@ -32,14 +32,14 @@ export function independent(rows: readonly (readonly Complex[])[]): boolean {
   const scales = left.map(row => Math.max(...row.map(modulus)));
   const used = new Set<number>();
   return left.every((row, index) => {
-    const column = row.reduce((best, z, at) => (!used.has(at) && (best < 0 || modulus(z) > modulus(row[best]!)) ? at : best), -1);
+    const column = row.reduce((best, z, at) => (!used.has(at) && (best < 0 || modulus(z) > modulus(row[best])) ? at : best), -1);
     const pivot = row[column];
-    if (!pivot || !(modulus(pivot) > 1e-9 * scales[index]!)) return false;
+    if (!pivot || !(modulus(pivot) > 1e-9 * scales[index])) return false;
     used.add(column);
     for (const other of left.slice(index + 1)) {
-      const factor = quotient(other[column]!, pivot);
+      const factor = quotient(other[column], pivot);
       row.forEach((z, at) => {
-        other[at] = { re: other[at]!.re - factor.re * z.re + factor.im * z.im, im: other[at]!.im - factor.re * z.im - factor.im * z.re };
+        other[at] = { re: other[at].re - factor.re * z.re + factor.im * z.im, im: other[at].im - factor.re * z.im - factor.im * z.re };
       });
     }
     return true;
@@ -48,7 +48,12 @@ export function independent(rows: readonly (readonly Complex[])[]): boolean {
 
 /** Whether two forms differ by a factor only. */
 export function proportional(a: Expr, b: Expr): boolean {
-  const points = [[0.7, 1.3, 0.4], [1.1, 0.6, 2.3], [-0.9, 1.7, 1.2], [1.9, -0.3, -0.8]].map(([p, k, E]) => ({ p: p!, k: k!, E: E! }));
+  const points = [
+    [0.7, 1.3, 0.4],
+    [1.1, 0.6, 2.3],
+    [-0.9, 1.7, 1.2],
+    [1.9, -0.3, -0.8],
+  ].map(([p, k, E]) => ({ p: p, k: k, E: E }));
   const rows = [evaluate(a, points), evaluate(b, points)];
   return rows.every(row => row.some(z => modulus(z) > 0)) && !independent(rows);
 }

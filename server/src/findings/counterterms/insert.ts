@@ -22,7 +22,8 @@ export function insertion({ text, source: { places } }: Evaluated, statements: r
 
 const onOneLine = (before: string, statements: readonly string[]): string => `${/\s$/.test(before) ? '' : ' '}${statements.join(' ')} `;
 
-const startOfLine = (text: string, offset: number): number => Math.max(text.lastIndexOf('\n', offset - 1), text.lastIndexOf('\r', offset - 1)) + 1;
+const startOfLine = (text: string, offset: number): number =>
+  Math.max(text.lastIndexOf('\n', offset - 1), text.lastIndexOf('\r', offset - 1)) + 1;
 
 function indentation(text: string, statement: number, model: number): string {
   const own = /^\s*/.exec(text.slice(startOfLine(text, statement), statement))![0];

@@ -19,7 +19,9 @@ export interface Need {
 
 /** What is missing for a divergence to be cancelled, the monomials inside it first. */
 export function needsOf(model: Evaluated, { term }: Divergence): Need[] {
-  const inside = term.ultraviolet.nestedIn.flatMap(monomial => termOf(model, monomial) ?? []).filter(({ status }) => status === 'uncancelled');
+  const inside = term.ultraviolet.nestedIn
+    .flatMap(monomial => termOf(model, monomial) ?? [])
+    .filter(({ status }) => status === 'uncancelled');
   return [...new Set([...inside, term])].map(one => needOf(model, one)).filter(({ forms }) => forms.length > 0);
 }
 

@@ -30,14 +30,17 @@ interface Part {
 function onShellParts(expr: Expr, spec: ModelSpec, momenta: readonly number[]): Part[] {
   const energies = kineticEnergies(spec, momenta);
   const at = (signOut: number, signIn: number): Complex[] =>
-    evaluate(expr, momenta.map((p, index) => ({ p: signOut * p, k: signIn * p, E: energies[index]! })));
+    evaluate(
+      expr,
+      momenta.map((p, index) => ({ p: signOut * p, k: signIn * p, E: energies[index] })),
+    );
   if (spec.wave.kind !== 'full') return [{ block: 'one', values: at(1, 1) }];
   const [pp, pm, mp, mm] = [at(1, 1), at(1, -1), at(-1, 1), at(-1, -1)];
   const part = (block: string, a: number, b: number): Part => ({
     block,
     values: pp.map((z, i) => ({
-      re: (z.re + b * pm[i]!.re + a * mp[i]!.re + a * b * mm[i]!.re) / 4,
-      im: (z.im + b * pm[i]!.im + a * mp[i]!.im + a * b * mm[i]!.im) / 4,
+      re: (z.re + b * pm[i].re + a * mp[i].re + a * b * mm[i].re) / 4,
+      im: (z.im + b * pm[i].im + a * mp[i].im + a * b * mm[i].im) / 4,
     })),
   });
   return [part('even', 1, 1), part('odd', -1, -1), part('mixed', 1, -1)];
@@ -51,7 +54,8 @@ function kineticEnergies(spec: ModelSpec, momenta: readonly number[]): number[] 
 }
 
 /** A form of the results (`p^2+k^2`, `of NAME`) as an expression in p, k, E; null where it is none. */
-export const expressionOf = (form: string, spec: ModelSpec): Expr | null => (form.startsWith('of ') ? kernelOf(form.slice(3), spec) : readForm(form));
+export const expressionOf = (form: string, spec: ModelSpec): Expr | null =>
+  form.startsWith('of ') ? kernelOf(form.slice(3), spec) : readForm(form);
 
 /** The form of a counterterm that a model declares. */
 export const declaredForm = ({ form }: CountertermSpec, spec: ModelSpec): Expr | null =>

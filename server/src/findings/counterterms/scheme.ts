@@ -17,7 +17,10 @@ export function schemesFor(model: Evaluated): { readonly onShell: Scheme; readon
   const below = spec.series.points.flatMap(({ p, E }) => (p === null && E !== null && E < 0 ? [Math.sqrt(-2 * spec.mu * E)] : []));
   if (momenta.length === 0 && below.length > 0 && Number.isFinite(below[0])) {
     const written = inUnit(Math.min(...below), spec);
-    return { onShell: { words: `at kappa = ${written}`, onShellAt: Math.min(...below) }, minimal: { words: `minimal at ${written}`, onShellAt: null } };
+    return {
+      onShell: { words: `at kappa = ${written}`, onShellAt: Math.min(...below) },
+      minimal: { words: `minimal at ${written}`, onShellAt: null },
+    };
   }
   // A series without momenta: a tenth of the cutoff lies where the theory is meant to hold.
   const at = momenta.length > 0 ? lowest : Number((spec.cutoff.value / 10).toPrecision(2));
@@ -38,7 +41,9 @@ const inUnit = (momentum: number, spec: ModelSpec): string => `${String(momentum
 function asInText({ text, source, spec }: Evaluated, lowest: number): string | null {
   const statement = source.places.series?.statement;
   if (!statement || spec.series.points[0]?.p !== lowest) return null;
-  const written = /\bat\s+p\s*=\s*([\d.]*\d\.?(?:e[-+]?\d+)?)(?:[ \t]*([A-Za-z]+(?:\^-?\d+)?))?\s*(?=\.\.|,|$)/.exec(text.slice(statement.start, statement.end));
+  const written = /\bat\s+p\s*=\s*([\d.]*\d\.?(?:e[-+]?\d+)?)(?:[ \t]*([A-Za-z]+(?:\^-?\d+)?))?\s*(?=\.\.|,|$)/.exec(
+    text.slice(statement.start, statement.end),
+  );
   if (!written) return null;
-  return written[2] ? `${written[1]} ${written[2]}` : written[1]!;
+  return written[2] ? `${written[1]} ${written[2]}` : written[1];
 }

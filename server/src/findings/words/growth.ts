@@ -22,7 +22,8 @@ const adverbs: Readonly<Record<number, string>> = { 1: 'linearly', 2: 'quadratic
 export function growthInWords(growth: Growth, cutoff: string): string {
   const formula = growthFormula(growth, cutoff);
   if (formula === '' || formula === unknown) return 'at a rate that is not known';
-  const adverb = growth.power === 0 ? (growth.log === 1 ? 'logarithmically' : undefined) : growth.log === 0 ? adverbs[growth.power!] : undefined;
+  const adverb =
+    growth.power === 0 ? (growth.log === 1 ? 'logarithmically' : undefined) : growth.log === 0 ? adverbs[growth.power!] : undefined;
   return adverb === undefined ? `as ${formula}` : `${adverb}, as ${formula}`;
 }
 
