@@ -101,6 +101,11 @@ export class Client {
       await new Promise<void>(resolve => this.waiting.push(resolve));
     }
   }
+  /** The diagnostics of this version of a document of one model once its numbers are known: the second that are published. */
+  complete(uri: string, version: number): Promise<Diagnostic[]> {
+    let count = 0;
+    return this.diagnostics(uri, params => params.version === version && ++count === 2);
+  }
 }
 
 /** The position of the first `word` in `text`, `shift` characters in. */
