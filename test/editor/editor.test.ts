@@ -36,6 +36,7 @@ describe.skipIf(obstacle)('in a real editor', () => {
 
     const hover = await workbench.hover('twist', 'img');
     await expect.poll(() => hover.locator('img').first().evaluate(shownWidth)).toBeGreaterThan(100);
+    await hover.locator('img').first().scrollIntoViewIfNeeded();
     await workbench.screenshot('2-hover');
 
     await hover.getByRole('link', { name: 'uv-divergence' }).click();

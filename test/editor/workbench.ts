@@ -45,6 +45,7 @@ export class Workbench {
     await this.persist(async () => {
       const { x, y } = await this.placeOf(word);
       await this.page.mouse.move(x + 200, y + 300);
+      await hover.waitFor({ state: 'hidden' });
       await this.page.mouse.move(x - 2, y);
       await this.page.mouse.move(x, y);
       await hover.locator(part).first().waitFor({ timeout: 3000 });
