@@ -7,7 +7,10 @@ export const nothing: Overrides = { cutoff: null, order: null };
 
 export const read = (text: string, overrides: Overrides = nothing): SourceDocument => readDocument(text, defaults, overrides);
 
-export const everyProblem = (document: SourceDocument): Problem[] => [...document.problems, ...document.models.flatMap(model => model.problems)];
+export const everyProblem = (document: SourceDocument): Problem[] => [
+  ...document.problems,
+  ...document.models.flatMap(model => model.problems),
+];
 
 /**
  * Reads a text with its expected problems drawn in: a line of carets under the place, then the code and a part of the message. A single

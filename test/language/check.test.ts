@@ -6,8 +6,11 @@ ${body}
 }`;
 
 /** A natural model in dimension 3 with one more line, problems drawn below it. */
-const line = (body: string) => check(natural(`interaction v(p, k) = c
-${body}`));
+const line = (body: string) =>
+  check(
+    natural(`interaction v(p, k) = c
+${body}`),
+  );
 
 describe('values', () => {
   test('names', () => {
@@ -101,7 +104,9 @@ describe('statements', () => {
     ['kinetic(k) = i*k^2\n             ^^^^^ value: real'],
     ['kinetic(q) = q^2\n        ^ syntax: `k` must stand here'],
     ['propagator(k, E) = 1/(E - k)\n^^^^^^^^^^ not-evaluated'],
-    ['data d = "a.csv" columns p, phase_shft, sigma\n^^^^ not-evaluated\n                            ^^^^^^^^^^ unknown-name: did you mean `phase_shift`'],
+    [
+      'data d = "a.csv" columns p, phase_shft, sigma\n^^^^ not-evaluated\n                            ^^^^^^^^^^ unknown-name: did you mean `phase_shift`',
+    ],
     ['fix c with scattering_length = 2\n^^^ not-evaluated\n    ^ value: has a value already'],
     ['coupling d free fix d with effective_range = 2\n                ^^^ not-evaluated'],
     ['expect finite to 7\n                 ^ value: at most 3'],
@@ -120,7 +125,9 @@ describe('statements', () => {
     ['counterterm z(p, k) = 1 cancels v^4 subtract at p = 1\n                                ^^^ value: of order 4'],
     ['counterterm z(p, k) = 1 cancels v^0 subtract at p = 1\n                                  ^ value: 1 or more'],
     ['counterterm z(p, k) = 1 cancels v^2, v*v subtract at p = 1\n                                     ^^^ duplicate'],
-    ['counterterm z(p, k) = 1 cancels v^2 subtract minimal at 0\n                                                        ^ value: positive'],
+    [
+      'counterterm z(p, k) = 1 cancels v^2 subtract minimal at 0\n                                                        ^ value: positive',
+    ],
     ['counterterm z of w cancels v^2 subtract at p = 1\n                 ^ unknown-name: no interaction'],
     ['counterterm v(p, k) = 1 cancels v^2 subtract at p = 1\n            ^ duplicate: declared already'],
     ['const r = 3 interaction w(r) = c*exp(-r)\n                          ^ reading: hides the value'],
@@ -144,9 +151,15 @@ describe('statements', () => {
 
   test('what the settings and the command line bring in', () => {
     const text = 'model a { mass reduced 1 interaction v(p, k) = 1 }';
-    expect(sound(text)).toMatchObject({ cutoff: { value: 30, declared: false, shape: { kind: 'sharp' } }, series: { order: 3, declared: false, points: [{ p: 1.5, E: null }] } });
+    expect(sound(text)).toMatchObject({
+      cutoff: { value: 30, declared: false, shape: { kind: 'sharp' } },
+      series: { order: 3, declared: false, points: [{ p: 1.5, E: null }] },
+    });
     const declared = 'model a { mass reduced 1 interaction v(p, k) = 1 cutoff L = 10 gaussian(2) series to 2 at p = 1 }';
-    expect(sound(declared, { cutoff: 20, order: 4 })).toMatchObject({ cutoff: { name: 'L', value: 20, declared: false, shape: { kind: 'gaussian', n: 2 } }, series: { order: 4, declared: false } });
+    expect(sound(declared, { cutoff: 20, order: 4 })).toMatchObject({
+      cutoff: { name: 'L', value: 20, declared: false, shape: { kind: 'gaussian', n: 2 } },
+      series: { order: 4, declared: false },
+    });
   });
 
   test('models: names, variants', () => {
@@ -158,9 +171,9 @@ model b from a { coupling c = 2 expect finite }
 model d from aa { coupling c = 2 }
              ^^ unknown-name: did you mean \`a\`
 model e from f { }
-             ^ value: variant of itself
+             ^ value: leads back to itself
 model f from e { }
-             ^ value: variant of itself`);
+             ^ value: leads back to itself`);
   });
 });
 
@@ -180,8 +193,8 @@ ${body}
     ['interaction v(p, k) = delta(p)\n                      ^^^^^ value: only in kernels'],
     ['interaction v(r) = c\n              ^ value: dimensions 2 and 3'],
     ['interaction v(p, k) = 1/(p - p)\n                      ^^^^^^^^^ value: no finite value'],
-    ["wave even interaction v(p, k) = i*c*(p - k)\n                                ^^^^^^^^^^^ value: mixes even and odd"],
-    ["wave odd interaction v(x) = c*delta(x - 1)\n                            ^^^^^^^^^^^^^^ value: mixes even and odd"],
+    ['wave even interaction v(p, k) = i*c*(p - k)\n                                ^^^^^^^^^^^ value: mixes even and odd'],
+    ['wave odd interaction v(x) = c*delta(x - 1)\n                            ^^^^^^^^^^^^^^ value: mixes even and odd'],
     ["wave odd interaction v(x) = c*delta'(x)\n                            ^^^^^^^^^^^ value: mixes even and odd"],
   ])('%s', drawn => {
     check(wire(drawn));

@@ -31,7 +31,13 @@ function scopesOf(text: string): string[] {
   });
   for (const rule of rules) {
     const match = new RegExp(rule.match, 'uy').exec(text);
-    if (match) return [...(rule.name ? [rule.name] : []), ...Object.entries(rule.captures ?? {}).filter(([i]) => match[Number(i)]).map(([, { name }]) => name)];
+    if (match)
+      return [
+        ...(rule.name ? [rule.name] : []),
+        ...Object.entries(rule.captures ?? {})
+          .filter(([i]) => match[Number(i)])
+          .map(([, { name }]) => name),
+      ];
   }
   return [];
 }

@@ -81,7 +81,10 @@ model softer from pair {
     within 10 % at p = 0.1 nm^-1
 }`);
     expect(spec.interactions.map(({ order }) => order)).toEqual([1, 1, 1, 2]);
-    expect(spec.counterterms.map(({ form, scheme }) => [form, scheme.kind])).toMatchObject([[{ arguments: 'pk' }, 'p'], [{ of: 'spike' }, 'kappa']]);
+    expect(spec.counterterms.map(({ form, scheme }) => [form, scheme.kind])).toMatchObject([
+      [{ arguments: 'pk' }, 'p'],
+      [{ of: 'spike' }, 'kappa'],
+    ]);
     expect(spec.couplings.map(({ dimension }) => dimension)).toEqual(['meV', 'meV*nm', 'meV*nm^2']);
     expect(spec.series.points).toHaveLength(10);
     expect(spec.expectations[0]).toMatchObject({ observable: 'transmission', value: 0.4, tolerance: expect.closeTo(0.04, 12) as number });
@@ -107,7 +110,9 @@ model softer from pair {
   });
 
   test('an unread file may hold any name', () => {
-    const document = read('use "more.tare"\nmodel a { mass reduced 1 interaction v(p, k) = elsewhere }\nmodel b { mass reduced 1 interaction v(p, k) = 1 }');
+    const document = read(
+      'use "more.tare"\nmodel a { mass reduced 1 interaction v(p, k) = elsewhere }\nmodel b { mass reduced 1 interaction v(p, k) = 1 }',
+    );
     expect(everyProblem(document).map(({ code }) => code)).toEqual(['not-evaluated']);
     expect(document.models.map(({ spec }) => spec === null)).toEqual([true, false]);
   });

@@ -45,14 +45,49 @@ const spansAreInside = (text: string) => {
   }
 };
 
-const scraps = [...statements, 'model', '{', '}', 'from', '"', '#', '\n', 'MeV', 'order', '..', '(', ')', '1e999', 'i', '^', '*', ',', 'use', 'units MeV, fm', 'free', 'fix v0 with', '=', '[1, 2]', "'", 'ₐ', '₂', 'µ', '\u0301', '\u00a0', '\ud83d'];
+const scraps = [
+  ...statements,
+  'model',
+  '{',
+  '}',
+  'from',
+  '"',
+  '#',
+  '\n',
+  'MeV',
+  'order',
+  '..',
+  '(',
+  ')',
+  '1e999',
+  'i',
+  '^',
+  '*',
+  ',',
+  'use',
+  'units MeV, fm',
+  'free',
+  'fix v0 with',
+  '=',
+  '[1, 2]',
+  "'",
+  'ₐ',
+  '₂',
+  'µ',
+  '\u0301',
+  '\u00a0',
+  '\ud83d',
+];
 
 describe('any text is read without an exception, every place inside it', () => {
   test('characters', () => {
     fc.assert(fc.property(fc.string({ unit: 'binary', maxLength: 200 }), spansAreInside), { numRuns: 300 });
   });
   test('scraps of the language', () => {
-    fc.assert(fc.property(fc.array(fc.constantFrom(...scraps), { maxLength: 40 }), parts => spansAreInside(parts.join(' '))), { numRuns: 300 });
+    fc.assert(
+      fc.property(fc.array(fc.constantFrom(...scraps), { maxLength: 40 }), parts => spansAreInside(parts.join(' '))),
+      { numRuns: 300 },
+    );
   });
   test('a sound model with a piece cut out, doubled or replaced', () => {
     const mutation = fc.tuple(fc.nat(model.length), fc.nat(30), fc.oneof(fc.constantFrom(...scraps), fc.string({ maxLength: 5 })));
@@ -70,7 +105,11 @@ test('cutting a text off anywhere never makes an exception', () => {
 test('the order of statements changes only how things are listed', () => {
   const sorted = (spec: ModelSpec) => {
     const names = spec.interactions.map(({ name }) => name);
-    const monomial = (exponents: readonly number[]) => names.map((name, i) => `${name}^${exponents[i]}`).sort().join('*');
+    const monomial = (exponents: readonly number[]) =>
+      names
+        .map((name, i) => `${name}^${exponents[i]}`)
+        .sort()
+        .join('*');
     const byName = <T extends { name: string }>(list: readonly T[]) => [...list].sort((a, b) => (a.name < b.name ? -1 : 1));
     return {
       ...spec,
@@ -102,7 +141,11 @@ test('editing and reading gives what reading afresh gives', () => {
 });
 
 describe('expressions mean what they mean elsewhere (mathjs as oracle)', () => {
-  const leaf = fc.oneof(fc.constantFrom('a', 'b', 'pi'), fc.integer({ min: 1, max: 9 }).map(String), fc.constantFrom('0.5', '1.25', '2e-1'));
+  const leaf = fc.oneof(
+    fc.constantFrom('a', 'b', 'pi'),
+    fc.integer({ min: 1, max: 9 }).map(String),
+    fc.constantFrom('0.5', '1.25', '2e-1'),
+  );
   const { formula } = fc.letrec<{ formula: string }>(tie => ({
     formula: fc.oneof(
       { depthSize: 'small', withCrossShrink: true },
@@ -111,7 +154,9 @@ describe('expressions mean what they mean elsewhere (mathjs as oracle)', () => {
       fc.tuple(leaf, fc.constantFrom('2', '-1', '-2^2', '0.5', 'b')).map(([x, n]) => `${x}^${n}`),
       tie('formula').map(x => `-${x}`),
       tie('formula').map(x => `(${x})`),
-      fc.tuple(fc.constantFrom('sqrt', 'exp', 'log', 'sin', 'cos', 'atan', 'tanh', 'abs', 'gamma', 'erf'), tie('formula')).map(([f, x]) => `${f}(${x})`),
+      fc
+        .tuple(fc.constantFrom('sqrt', 'exp', 'log', 'sin', 'cos', 'atan', 'tanh', 'abs', 'gamma', 'erf'), tie('formula'))
+        .map(([f, x]) => `${f}(${x})`),
     ),
   }));
   const values = { a: 1.7, b: 0.6 };
@@ -137,7 +182,9 @@ describe('expressions mean what they mean elsewhere (mathjs as oracle)', () => {
       fc.property(formula, text => {
         const wanted = safely(text);
         if (wanted === null || Math.hypot(wanted.re, wanted.im) > 1e12) return;
-        const document = read(`const a = 1.7 const b = 0.6 const value = ${text}\nmodel m { mass reduced 1 interaction v(p, k, E) = value }`);
+        const document = read(
+          `const a = 1.7 const b = 0.6 const value = ${text}\nmodel m { mass reduced 1 interaction v(p, k, E) = value }`,
+        );
         const kernel = document.models[0].spec?.interactions[0].kernel;
         if (kernel === undefined) {
           // Complex constants make the contact non-Hermitian; what is undefined here has no finite intermediate value there either.

@@ -25,17 +25,44 @@ model notch {
     expectations: [{ kind: 'finite', to: 3 }],
   });
   expect(spec.series.points.map(({ p }) => p)).toEqual([0.2, 1, 1.5, 2, 2.5, 3]);
-  expect(spec.counterterms[0].cancels).toEqual([[0, 2], [2, 1]]);
-  expect(spec.couplings).toEqual([{ name: 'g', value: 0.5, dimension: '1' }, { name: 'h', value: 0.25, dimension: '1' }]);
+  expect(spec.counterterms[0].cancels).toEqual([
+    [0, 2],
+    [2, 1],
+  ]);
+  expect(spec.couplings).toEqual([
+    { name: 'g', value: 0.5, dimension: '1' },
+    { name: 'h', value: 0.25, dimension: '1' },
+  ]);
 });
 
 test('statements need no line of their own, and comments may hold anything', () => {
-  const spec = sound('\uFEFFmodel a { # } " model\n mass reduced 1 coupling free = 2 coupling order = 3\u00a0interaction m(p, k) = order*free order 2\r\n}');
+  const spec = sound(
+    '\uFEFFmodel a { # } " model\n mass reduced 1 coupling free = 2 coupling order = 3\u00a0interaction m(p, k) = order*free order 2\r\n}',
+  );
   expect(spec.interactions).toMatchObject([{ name: 'm', order: 2 }]);
 });
 
 test('words of the grammar are free names elsewhere', () => {
-  const names = ['m', 'l', 'E', 'g', 'order', 'free', 'K', 'u', 'gamma', 'at', 'points', 'scan', 'sharp', 'p', 'reduced', 'from', 'deg', 'finite'];
+  const names = [
+    'm',
+    'l',
+    'E',
+    'g',
+    'order',
+    'free',
+    'K',
+    'u',
+    'gamma',
+    'at',
+    'points',
+    'scan',
+    'sharp',
+    'p',
+    'reduced',
+    'from',
+    'deg',
+    'finite',
+  ];
   for (const name of names) {
     const spec = sound(`model a { mass reduced 1 coupling ${name} = 2 interaction v(q) = ${name}*exp(-q^2) }`);
     expect(spec.couplings[0].name).toBe(name);
@@ -115,9 +142,15 @@ test('a misspelt statement is one mistake, whatever it would have declared', () 
 });
 
 test('200 deep is read, 201 is one message', () => {
-  const deep = (n: number) => [`${'('.repeat(n)}1${')'.repeat(n)}`, `${'-'.repeat(n)}1`, `${'1^'.repeat(n)}1`, `${'cos('.repeat(n)}1${')'.repeat(n)}`];
+  const deep = (n: number) => [
+    `${'('.repeat(n)}1${')'.repeat(n)}`,
+    `${'-'.repeat(n)}1`,
+    `${'1^'.repeat(n)}1`,
+    `${'cos('.repeat(n)}1${')'.repeat(n)}`,
+  ];
   for (const formula of deep(200)) sound(inKernel(formula));
-  for (const formula of deep(201)) expect(everyProblem(read(inKernel(formula))).map(({ message }) => message)).toEqual([expect.stringContaining('200 deep')]);
+  for (const formula of deep(201))
+    expect(everyProblem(read(inKernel(formula))).map(({ message }) => message)).toEqual([expect.stringContaining('200 deep')]);
 });
 
 test('megabytes of digits, signs and words end in a message each', () => {
@@ -130,6 +163,7 @@ test('megabytes of digits, signs and words end in a message each', () => {
 
 test('a file without a model, and what stands between models', () => {
   check('\n! missing: no model');
+  expect(everyProblem(read('7'.repeat(1e6)))).toHaveLength(1);
   check(`const a = 1 +
              ! syntax: missing here
 use other

@@ -9,12 +9,14 @@ ${body} }`;
 
 describe('in MeV and fm', () => {
   test('numbers come out in the units of the model', () => {
-    const spec = sound(nuclear(`coupling c = 2 MeV*fm^3
+    const spec = sound(
+      nuclear(`coupling c = 2 MeV*fm^3
       coupling d = 0.003 keV*nm^2*angstrom
       interaction v(p, k) = c + d
       cutoff L = 450 MeV gaussian(2) scan 1 fm^-1 .. 900 MeV
       series to 2 at p = 100 MeV, 1 fm^-1 .. 200 keV/hbarc*1000*2
-      expect amplitude = 3 MeV*fm^3 within 5 % at p = 1 fm^-1`));
+      expect amplitude = 3 MeV*fm^3 within 5 % at p = 1 fm^-1`),
+    );
     expect(spec.units).toEqual({ energy: 'MeV', length: 'fm' });
     expect(spec.mu).toBeCloseTo((938.272 * 939.565) / (938.272 + 939.565) / hbarc ** 2, 10);
     expect(spec.masses).toEqual([938.272, 939.565]);
@@ -59,7 +61,9 @@ describe('in MeV and fm', () => {
     ['interaction v(p, k) = 2 MeV^1.5\n                            ^^^ syntax: (3 MeV)^n'],
     ['coupling K = 2 interaction v(r) = 3 MeV*K/(1 K)\n                                        ^ reading: as the unit'],
     ['const l = 1/2 fm interaction v(r) = 1 MeV*exp(-r*l)\n          ^^^^^^ reading'],
-    ['interaction v(r) = 0 cutoff L = 500 sharp\n                                ^^^ dimension: The cutoff is a momentum and 500 has no unit; write `500 MeV` or `500 fm^-1`'],
+    [
+      'interaction v(r) = 0 cutoff L = 500 sharp\n                                ^^^ dimension: The cutoff is a momentum and 500 has no unit; write `500 MeV` or `500 fm^-1`',
+    ],
     ['interaction v(r) = 0 cutoff L = 500 fm sharp\n                                ^^^^^^ dimension: The cutoff is a momentum'],
     ['interaction v(r) = 0 expect binding_energy = 2 fm within 1 %\n                                             ^^^^ dimension'],
     ['interaction v(r) = 0 kinetic(k) = k^2\n                                  ^^^ dimension: kinetic energy'],
@@ -84,11 +88,13 @@ model a { mass reduced 1 interaction v(p, k) = w }
   });
 
   test('a free coupling takes the dimension its kernel asks for, once', () => {
-    check(nuclear(`coupling c free interaction v(p, k) = c fix c with scattering_length = 5 fm
+    check(
+      nuclear(`coupling c free interaction v(p, k) = c fix c with scattering_length = 5 fm
                                         ^^^ not-evaluated
 interaction w(r) = c*exp(-r/1 fm)
                    ^^^^^^^^^^^^^^ dimension: V(r)
-`));
+`),
+    );
   });
 
   test('units that cannot be, and units in the wrong order', () => {
@@ -103,7 +109,7 @@ test('a wire in meV and nm: masses of the electron', () => {
   const spec = sound(`model a { units meV, nm dimension 1 mass reduced 0.067 me coupling v = 50 meV coupling s = 20 meV*nm
     interaction w(x) = -v*exp(-x^2/(2*(4 nm)^2)) + s*delta(x - 5 nm) }`);
   // hbar^2/(2 m_e) = 38.0998 meV nm^2 * 1000 (CODATA 2022)
-  expect(1 / (2 * spec.mu)).toBeCloseTo(38.09982 / 0.067 * 1, 1);
+  expect(1 / (2 * spec.mu)).toBeCloseTo((38.09982 / 0.067) * 1, 1);
   expect(spec.couplings.map(({ value }) => value)).toEqual([50, 20]);
 });
 

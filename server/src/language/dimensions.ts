@@ -29,7 +29,7 @@ export class Dimensions {
   /** With every coupling settled so far put in. */
   resolved(dimension: Dimension): Dimension {
     let result = dimension;
-    for (let again = true; again && result.free !== undefined; ) {
+    for (let again = true; again && result.free !== undefined;) {
       again = false;
       for (const [name, exponent] of result.free) {
         const known = this.settled.get(name);

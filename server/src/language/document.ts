@@ -6,7 +6,8 @@ export interface Span {
   readonly end: number;
 }
 
-export type ProblemCode = 'syntax' | 'unknown-name' | 'dimension' | 'duplicate' | 'missing' | 'value' | 'file' | 'not-evaluated' | 'not-hermitian' | 'reading';
+export type ProblemCode =
+  'syntax' | 'unknown-name' | 'dimension' | 'duplicate' | 'missing' | 'value' | 'file' | 'not-evaluated' | 'not-hermitian' | 'reading';
 
 /** A mistake in the text (or a hint about how it was read). One a mistake, at its place; says what is wrong and what to do. */
 export interface Problem {

@@ -20,7 +20,13 @@ const following: Partial<Record<ReservedWord, readonly string[]>> = {
 };
 
 /** A sentence for the first mistake that the grammar met in a statement. */
-export function explain(word: ReservedWord, error: IRecognitionException, tokens: readonly IToken[], text: string, expressionEnd: number): Remark {
+export function explain(
+  word: ReservedWord,
+  error: IRecognitionException,
+  tokens: readonly IToken[],
+  text: string,
+  expressionEnd: number,
+): Remark {
   const wanted = error.message;
   const token = error.token;
   const before = token.tokenType === EOF ? tokens[tokens.length - 1] : tokens[tokens.indexOf(token) - 1];
@@ -33,7 +39,11 @@ export function explain(word: ReservedWord, error: IRecognitionException, tokens
   const image = `\`${shown(token.image)}\``;
   const afterExpression = before !== undefined && endOf(before) === expressionEnd;
   if (wanted === expected.unitPower) {
-    return { code: 'syntax', span, message: 'The power of a unit is a whole number; a power of the quantity needs parentheses, as in `(3 MeV)^n`.' };
+    return {
+      code: 'syntax',
+      span,
+      message: 'The power of a unit is a whole number; a power of the quantity needs parentheses, as in `(3 MeV)^n`.',
+    };
   }
   if (token.tokenType === t.OpenBrace) {
     return { code: 'syntax', span, message: 'A `{` stands only behind the name of a model; take it out.' };
@@ -56,10 +66,18 @@ export function explain(word: ReservedWord, error: IRecognitionException, tokens
       return { code: 'syntax', span, message: `${image} has no meaning here; did you mean \`${meant}\`?`, mend };
     }
     if (word === 'units') {
-      return { code: 'syntax', span, message: `${image} is no unit${suggestion(token.image, [...unitWords, 'natural'])}${wantedUnits(token)}` };
+      return {
+        code: 'syntax',
+        span,
+        message: `${image} is no unit${suggestion(token.image, [...unitWords, 'natural'])}${wantedUnits(token)}`,
+      };
     }
   }
-  if (afterExpression && before !== undefined && (tokenMatcher(token, t.Name) || tokenMatcher(token, t.NumberWord) || tokenMatcher(token, t.Open))) {
+  if (
+    afterExpression &&
+    before !== undefined &&
+    (tokenMatcher(token, t.Name) || tokenMatcher(token, t.NumberWord) || tokenMatcher(token, t.Open))
+  ) {
     return missingProduct(token, before, text, span);
   }
   if (token.tokenType === t.Caret && before !== undefined && tokenMatcher(before, t.UnitWord)) {
@@ -70,7 +88,8 @@ export function explain(word: ReservedWord, error: IRecognitionException, tokens
 }
 
 /** The reserved word that `word` was most likely meant to be. */
-export const misspelt = (word: string): ReservedWord | null => (word.length < 3 ? null : (nearest(word, reservedWords) as ReservedWord | null));
+export const misspelt = (word: string): ReservedWord | null =>
+  word.length < 3 ? null : (nearest(word, reservedWords) as ReservedWord | null);
 
 /** `image` stands where a statement begins and is none, but nearly the word `meant`; `next` is the word behind it. */
 export function misspeltStatement(meant: ReservedWord, image: string, next: IToken | undefined, span: Remark['span']): Remark {
@@ -83,7 +102,8 @@ export function misspeltStatement(meant: ReservedWord, image: string, next: ITok
   };
 }
 
-const opensLine = (text: string, offset: number): boolean => /(?:^|[\r\n])[ \t\u00a0]*$/.test(text.slice(Math.max(0, offset - 200), offset));
+const opensLine = (text: string, offset: number): boolean =>
+  /(?:^|[\r\n])[ \t\u00a0]*$/.test(text.slice(Math.max(0, offset - 200), offset));
 
 function missingProduct(token: IToken, before: IToken, text: string, span: Remark['span']): Remark {
   const number = before.tokenType === t.Int || before.tokenType === t.NumberWord;

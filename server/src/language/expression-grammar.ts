@@ -91,7 +91,12 @@ export class ExpressionGrammar extends EmbeddedActionsParser {
               GATE: () => base.kind !== 'name' && this.ahead(1, t.UnitWord),
               DEF: () => {
                 const units = this.SUBRULE(this.unitPowers);
-                result = this.ACTION(() => ({ kind: 'quantity' as const, of: base, units, span: { start: base.span.start, end: units[units.length - 1].span.end } }));
+                result = this.ACTION(() => ({
+                  kind: 'quantity' as const,
+                  of: base,
+                  units,
+                  span: { start: base.span.start, end: units[units.length - 1].span.end },
+                }));
               },
             });
             this.OPTION2({

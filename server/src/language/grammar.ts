@@ -2,7 +2,23 @@ import type { IToken } from 'chevrotain';
 import type { CutoffShape, Observable } from '../core/model/spec';
 import { expected } from './expected';
 import { ExpressionGrammar, spanOf, whole, word, type Rule } from './expression-grammar';
-import type { Axis, Column, Expectation, Factor, Formula, Item, Kernel, Point, Range, Scheme, StatementBody, WaveWords, Whole, Word, WrittenMonomial } from './syntax';
+import type {
+  Axis,
+  Column,
+  Expectation,
+  Factor,
+  Formula,
+  Item,
+  Kernel,
+  Point,
+  Range,
+  Scheme,
+  StatementBody,
+  WaveWords,
+  Whole,
+  Word,
+  WrittenMonomial,
+} from './syntax';
 import * as t from './tokens';
 import { words as w } from './tokens';
 

@@ -74,15 +74,27 @@ type Of<K extends Formula['kind']> = Extract<Formula, { kind: K }>;
 type Operation = Of<'add' | 'subtract' | 'multiply' | 'divide' | 'power'>;
 
 const error = (context: Context, code: Problem['code'], span: Span, message: string, more: Partial<Problem> = {}): null => {
-  context.report({ code, severity: 'error', message, span: { start: context.offset + span.start, end: context.offset + span.end }, ...more });
+  context.report({
+    code,
+    severity: 'error',
+    message,
+    span: { start: context.offset + span.start, end: context.offset + span.end },
+    ...more,
+  });
   return null;
 };
 
 function lowerNumber(formula: Of<'number'>, context: Context): Lowered | null {
   const { value, text } = formula;
-  if (!Number.isFinite(value)) return error(context, 'value', formula.span, `\`${shown(text)}\` is above 1.8e308, the largest number there is.`);
+  if (!Number.isFinite(value))
+    return error(context, 'value', formula.span, `\`${shown(text)}\` is above 1.8e308, the largest number there is.`);
   if (value === 0 && /[1-9]/.test(text.split(/e/i)[0])) {
-    return error(context, 'value', formula.span, `\`${shown(text)}\` is below 5e-324, the smallest number there is; write 0 if it is meant.`);
+    return error(
+      context,
+      'value',
+      formula.span,
+      `\`${shown(text)}\` is below 5e-324, the smallest number there is; write 0 if it is meant.`,
+    );
   }
   return { expr: number(value), dimension: value === 0 ? null : pure, value: { re: value, im: 0 }, constant: true };
 }
@@ -111,7 +123,12 @@ function lowerQuantity(formula: Of<'quantity'>, context: Context): Lowered | nul
     const span = { start: first.span.start, end: last.span.end };
     const means = context.known();
     const product = [...means].includes(first.unit) ? `; if the value \`${first.unit}\` is meant, write \`*${first.unit}\`` : '';
-    return error(context, 'dimension', span, `The model is in natural units, where \`${first.unit}\` has no place; declare \`units\` or write a pure number${product}.`);
+    return error(
+      context,
+      'dimension',
+      span,
+      `The model is in natural units, where \`${first.unit}\` has no place; declare \`units\` or write a pure number${product}.`,
+    );
   }
   const names = formula.units.length > 1 ? new Set(context.known()) : null;
   let factor = 1;
@@ -121,7 +138,13 @@ function lowerQuantity(formula: Of<'quantity'>, context: Context): Lowered | nul
     dimension = product(dimension, dimensionOfUnit(unit), power);
     if (i > 0 && names!.has(unit)) {
       const message = `\`${unit}\` is read as the unit here, not as the value of that name; for the value write it first, as in \`${unit}*3 ${first.unit}\`.`;
-      context.report({ code: 'reading', severity: 'hint', message, span: { start: context.offset + span.start, end: context.offset + span.end }, subject: unit });
+      context.report({
+        code: 'reading',
+        severity: 'hint',
+        message,
+        span: { start: context.offset + span.start, end: context.offset + span.end },
+        subject: unit,
+      });
     }
   }
   if (of === null) return null;
@@ -137,9 +160,20 @@ function lowerQuantity(formula: Of<'quantity'>, context: Context): Lowered | nul
 function lowerOperation(formula: Operation, context: Context): Lowered | null {
   const left = lower(formula.left, context);
   const right = lower(formula.right, context);
-  if (formula.kind === 'divide' && formula.left.kind === 'number' && formula.right.kind === 'quantity' && formula.right.of.kind === 'number') {
-    const message = 'The unit belongs to the number before it: this is read as `a/(b unit)`. Write parentheses around what the unit is meant for.';
-    context.report({ code: 'reading', severity: 'hint', message, span: { start: context.offset + formula.span.start, end: context.offset + formula.span.end } });
+  if (
+    formula.kind === 'divide' &&
+    formula.left.kind === 'number' &&
+    formula.right.kind === 'quantity' &&
+    formula.right.of.kind === 'number'
+  ) {
+    const message =
+      'The unit belongs to the number before it: this is read as `a/(b unit)`. Write parentheses around what the unit is meant for.';
+    context.report({
+      code: 'reading',
+      severity: 'hint',
+      message,
+      span: { start: context.offset + formula.span.start, end: context.offset + formula.span.end },
+    });
   }
   if (left === null || right === null) return null;
   const dimension = combineDimensions(formula, left, right, context);
@@ -196,7 +230,12 @@ function powerDimension(formula: Operation, left: Lowered, right: Lowered, conte
     if (right.value.im === 0) return product(pure, base, right.value.re);
   }
   if (dimensions.agree(base, pure)) return pure;
-  error(context, 'dimension', formula.right.span, `The exponent of a quantity with a unit is a number or a constant; here the base is ${dimensions.name(base)}.`);
+  error(
+    context,
+    'dimension',
+    formula.right.span,
+    `The exponent of a quantity with a unit is a number or a constant; here the base is ${dimensions.name(base)}.`,
+  );
   return undefined;
 }
 
@@ -216,7 +255,12 @@ function lowerCall(formula: Of<'call'>, context: Context): Lowered | null {
   const free = name === 'sqrt' || name === 'abs' || name === 'step';
   for (const [i, argument] of lowered.entries()) {
     if (free || argument.dimension === null || dimensions.agree(argument.dimension, pure)) continue;
-    return error(context, 'dimension', formula.arguments[i].span, `The argument of \`${name}\` is a pure number, and this is ${dimensions.name(argument.dimension)}.`);
+    return error(
+      context,
+      'dimension',
+      formula.arguments[i].span,
+      `The argument of \`${name}\` is a pure number, and this is ${dimensions.name(argument.dimension)}.`,
+    );
   }
   const values = lowered.map(argument => argument.value);
   const value = values.every(v => v !== null) ? applyFunction(name, values) : null;
@@ -226,15 +270,28 @@ function lowerCall(formula: Of<'call'>, context: Context): Lowered | null {
   }
   const of = lowered[0].dimension;
   const dimension = name === 'sqrt' ? of && product(pure, dimensions.resolved(of), 0.5) : name === 'abs' ? of : pure;
-  return { expr: call(name, lowered.map(argument => argument.expr)), dimension, value, constant: lowered.every(argument => argument.constant) };
+  return {
+    expr: call(
+      name,
+      lowered.map(argument => argument.expr),
+    ),
+    dimension,
+    value,
+    constant: lowered.every(argument => argument.constant),
+  };
 }
 
 function notAFunction(formula: Of<'call'>, context: Context): null {
   const { name, span } = formula.function;
   const isValue = context.arguments.has(name) || context.lookup(name).kind !== 'mistake';
-  if (!isValue) return error(context, 'unknown-name', span, `There is no function \`${shown(name)}\`${suggestion(name, functionNames) || '.'}`, { subject: name });
+  if (!isValue)
+    return error(context, 'unknown-name', span, `There is no function \`${shown(name)}\`${suggestion(name, functionNames) || '.'}`, {
+      subject: name,
+    });
   const place = { start: context.offset + span.end, end: context.offset + span.end };
-  return error(context, 'syntax', formula.open, `A product needs its sign: write \`${shown(name)}*(…)\`.`, { mend: { title: 'Insert `*`', span: place, text: '*' } });
+  return error(context, 'syntax', formula.open, `A product needs its sign: write \`${shown(name)}*(…)\`.`, {
+    mend: { title: 'Insert `*`', span: place, text: '*' },
+  });
 }
 
 function lowerDelta(formula: Of<'call'>, argument: Lowered, context: Context): Lowered | null {

@@ -66,7 +66,8 @@ class Outliner {
       this.problem({ start: end, end }, `The \`}\` that ends the model \`${shown(this.open.name.name)}\` is missing.`);
       this.finish(end, end);
     }
-    if (this.file.models.length === 0 && !this.file.broken.some(broken => broken.word === 'model')) {
+    // A file of something else altogether has said so already.
+    if (this.file.models.length === 0 && this.file.problems.length === 0 && !this.file.broken.some(broken => broken.word === 'model')) {
       const message = 'This file has no model; write one as `model NAME { … }`.';
       this.file.problems.push({ code: 'missing', severity: 'error', message, span: { start: 0, end: 0 } });
     }
@@ -135,7 +136,8 @@ class Outliner {
 
   private keep(piece: Piece & { word: ReservedWord }, parsed: ParsedStatement): void {
     for (const remark of parsed.remarks) this.remark(remark, piece.start);
-    if (parsed.body !== null) this.block.statements.push({ word: piece.word, body: parsed.body, span: { start: piece.start, end: piece.end } });
+    if (parsed.body !== null)
+      this.block.statements.push({ word: piece.word, body: parsed.body, span: { start: piece.start, end: piece.end } });
     else this.block.broken.push({ word: piece.word, name: parsed.name?.name ?? null });
   }
 
@@ -147,7 +149,10 @@ class Outliner {
 
   private model(piece: Piece, parsed: ParsedStatement): void {
     if (this.open !== null) {
-      this.problem({ start: piece.start, end: piece.start + 5 }, `A \`}\` is missing before this: the model \`${shown(this.open.name.name)}\` is still open.`);
+      this.problem(
+        { start: piece.start, end: piece.start + 5 },
+        `A \`}\` is missing before this: the model \`${shown(this.open.name.name)}\` is still open.`,
+      );
       this.finish(piece.start, piece.start);
     }
     const { body } = parsed;

@@ -37,9 +37,14 @@ export function parseStatement(word: ReservedWord, text: string): ParsedStatemen
 function parseAfresh(word: ReservedWord, text: string): ParsedStatement {
   const { tokens, mistakes } = t.tokenize(text);
   const name = declaredName(word, tokens);
-  if (mistakes.length > 0) return { body: null, name, endsEarly: false, remarks: mistakes.map(mistake => ({ code: 'syntax', ...mistake })) };
+  if (mistakes.length > 0)
+    return { body: null, name, endsEarly: false, remarks: mistakes.map(mistake => ({ code: 'syntax', ...mistake })) };
   if (tokens.length > longest) {
-    const remark: Remark = { code: 'syntax', message: `A statement has at most ${longest} words and signs; cut this one into several.`, span: spanOf(tokens[longest]) };
+    const remark: Remark = {
+      code: 'syntax',
+      message: `A statement has at most ${longest} words and signs; cut this one into several.`,
+      span: spanOf(tokens[longest]),
+    };
     return { body: null, name, endsEarly: false, remarks: [remark] };
   }
   grammar ??= new StatementGrammar();

@@ -1,9 +1,9 @@
 import { checkModel, type FileView } from './check/check-model';
 import { fileNames } from './check/declarations';
 import { keyword, Reporter, statementsOf } from './check/model';
-import { merge } from './check/variants';
+import { lineageOf, longestLineage, mergeLineage, modelsByName, type Lineage, type ModelsByName } from './check/variants';
 import { Dimensions } from './dimensions';
-import type { Defaults, ModelInText, Overrides, SourceDocument } from './document';
+import type { Defaults, ModelInText, Overrides, Problem, SourceDocument } from './document';
 import { shown, suggestion } from './names';
 import { outline, type ModelBlock, type Outline } from './outline';
 import { Scope } from './scope';
@@ -21,7 +21,8 @@ export function readDocument(text: string, defaults: Defaults, overrides: Overri
     reporter.error('not-evaluated', keyword(use), '`use` is read but not followed by this version; write what it brings into this file.');
   }
   const view = viewOf(text, file, reporter);
-  const models = file.models.map(block => checkVariant(block, file, view, defaults, overrides));
+  const byName = modelsByName(file.models);
+  const models = file.models.map(block => checkVariant(block, byName, view, defaults, overrides));
   return { text, problems: [...reporter.problems].sort((a, b) => a.span.start - b.span.start), models };
 }
 
@@ -37,55 +38,41 @@ function viewOf(text: string, file: Outline, reporter: Reporter): FileView {
   return { text, constants, scope, open };
 }
 
-function checkVariant(block: ModelBlock, file: Outline, view: FileView, defaults: Defaults, overrides: Overrides): ModelInText {
-  const problems = [...block.problems, ...nameProblems(block, file, view.open)];
-  const base = withBase(block, file, []);
+function checkVariant(block: ModelBlock, models: ModelsByName, view: FileView, defaults: Defaults, overrides: Overrides): ModelInText {
+  const lineage = lineageOf(block, models);
+  const problems = [...block.problems, ...nameProblems(block, lineage, models, view.open)];
   // A variant of an unknown model may hold anything: nothing is missing in it and no name is wrong.
-  const seen = base === null ? { ...view, open: true } : view;
-  return checkModel({ ...block, problems }, base ?? block, seen, defaults, overrides);
+  const seen = lineage.end === 'model' ? view : { ...view, open: true };
+  return checkModel({ ...block, problems }, mergeLineage(lineage), seen, defaults, overrides);
 }
 
-/** The model with the statements of what it varies; null where that is unknown or leads back to itself. */
-function withBase(block: ModelBlock, file: Outline, under: readonly ModelBlock[]): ModelBlock | null {
-  if (block.from === null) return block;
-  const base = file.models.find(model => model.name.name === block.from!.name);
-  if (base === undefined || base === block || under.includes(base) || under.length > deepestVariant) return null;
-  const whole = withBase(base, file, [...under, block]);
-  return whole && merge(whole, block);
-}
-
-/** Variants of variants: enough for anyone, and short of the stack. */
-const deepestVariant = 100;
-
-function nameProblems(block: ModelBlock, file: Outline, open: boolean): SourceDocument['problems'] {
+function nameProblems(block: ModelBlock, lineage: Lineage, models: ModelsByName, open: boolean): readonly Problem[] {
   const reporter = new Reporter(block.span);
   const { name, from } = block;
-  const first = file.models.find(model => model.name.name === name.name)!;
+  const subject = { subject: name.name };
+  const first = models.get(name.name)!;
   if (first !== block && name.name !== '') {
     const related = [{ span: first.name.span, message: 'declared here first' }];
-    reporter.error('duplicate', name.span, `There is a model \`${shown(name.name)}\` already; choose another name.`, { subject: name.name, related });
+    reporter.error('duplicate', name.span, `There is a model \`${shown(name.name)}\` already; choose another name.`, {
+      ...subject,
+      related,
+    });
   }
   if (from === null) return reporter.problems;
-  const isKnown = file.models.some(model => model.name.name === from.name);
-  if (!isKnown && !open) {
-    const near = suggestion(from.name, file.models.map(model => model.name.name).filter(other => other !== name.name));
-    reporter.error('unknown-name', from.span, `There is no model \`${shown(from.name)}\`${near || ' in this file.'}`, { subject: from.name });
-  } else if (leadsBack(block, file)) {
-    reporter.error('value', from.span, `\`${shown(name.name)}\` is a variant of itself.`, { subject: name.name });
+  if (!models.has(from.name)) {
+    const others = [...models.keys()].filter(other => other !== name.name);
+    const message = `There is no model \`${shown(from.name)}\`${suggestion(from.name, others) || ' in this file.'}`;
+    if (!open) reporter.error('unknown-name', from.span, message, { subject: from.name });
+  } else if (lineage.end === 'circle') {
+    reporter.error(
+      'value',
+      from.span,
+      `\`${shown(name.name)}\` varies a model that leads back to itself, or through more than ${longestLineage} others.`,
+      subject,
+    );
   } else {
-    reporter.error('not-evaluated', from.span, 'A variant of another model is read but not evaluated by this version; write its statements out.', { subject: name.name });
+    const message = 'A variant of another model is read but not evaluated by this version; write its statements out.';
+    reporter.error('not-evaluated', from.span, message, subject);
   }
   return reporter.problems;
-}
-
-function leadsBack(block: ModelBlock, file: Outline): boolean {
-  const seen = new Set<ModelBlock>();
-  let current: ModelBlock | undefined = block;
-  while (current?.from && !seen.has(current)) {
-    seen.add(current);
-    const { name }: { name: string } = current.from;
-    current = file.models.find(model => model.name.name === name);
-    if (current === block) return true;
-  }
-  return false;
 }

@@ -54,13 +54,18 @@ export class Scope {
     if (this.names.declarations.has(name)) return this.meaning(name);
     if (this.names.broken.has(name)) return silent;
     if (name === this.names.cutoff) {
-      return { kind: 'mistake', code: 'unknown-name', message: `\`${shown(name)}\` is the cutoff, which no expression may depend on; declare a \`const\`.` };
+      return {
+        kind: 'mistake',
+        code: 'unknown-name',
+        message: `\`${shown(name)}\` is the cutoff, which no expression may depend on; declare a \`const\`.`,
+      };
     }
     const predefined = this.predefined(name);
     if (predefined !== null) return predefined;
     const { outer, system } = this.around;
     if (outer?.has(name)) return this.fromOutside(name, outer.lookup(name));
-    if (name === 'hbarc' && outer !== null && system !== null) return { kind: 'value', value: real(hbarcIn(system)), dimension: { e: 1, l: 1 } };
+    if (name === 'hbarc' && outer !== null && system !== null)
+      return { kind: 'value', value: real(hbarcIn(system)), dimension: { e: 1, l: 1 } };
     if (this.around.open) return silent;
     return { kind: 'mistake', code: 'unknown-name', message: this.unknownMessage(name) };
   }
@@ -85,12 +90,22 @@ export class Scope {
   /** The context in which a statement's expressions are read. */
   context(offset: number, args: ReadonlyMap<string, Dimension> = noArguments, delta: Context['delta'] = null): Context {
     const { system, dimensions, report } = this.around;
-    return { offset, system, dimensions, arguments: args, delta, report, lookup: name => this.lookup(name), known: () => [...args.keys(), ...this.all()] };
+    return {
+      offset,
+      system,
+      dimensions,
+      arguments: args,
+      delta,
+      report,
+      lookup: name => this.lookup(name),
+      known: () => [...args.keys(), ...this.all()],
+    };
   }
 
   /** In a natural model a constant of the file that has a unit has no place. */
   private fromOutside(name: string, meaning: Meaning): Meaning {
-    if (this.around.system !== null || meaning.kind !== 'value' || meaning.dimension === null || sameDimension(meaning.dimension, pure)) return meaning;
+    if (this.around.system !== null || meaning.kind !== 'value' || meaning.dimension === null || sameDimension(meaning.dimension, pure))
+      return meaning;
     const message = `The model is in natural units, and the constant \`${shown(name)}\` has a unit; declare \`units\`, or a pure number in its place.`;
     return { kind: 'mistake', code: 'dimension', message };
   }
@@ -108,7 +123,13 @@ export class Scope {
     const at = this.busy.indexOf(name);
     if (at >= 0) {
       const chain = [...this.busy.slice(at), name].map(n => `\`${shown(n)}\``).join(' → ');
-      this.around.report({ code: 'value', severity: 'error', message: `\`${shown(name)}\` depends on itself: ${chain}.`, span: declaration.nameSpan, subject: name });
+      this.around.report({
+        code: 'value',
+        severity: 'error',
+        message: `\`${shown(name)}\` depends on itself: ${chain}.`,
+        span: declaration.nameSpan,
+        subject: name,
+      });
       return silent;
     }
     if (this.busy.length >= longestChain) {
@@ -129,7 +150,8 @@ export class Scope {
     if (formula === null) return { kind: 'coupling', value: null, dimension: this.around.dimensions.free(name) };
     const lowered = lower(formula, this.context(offset));
     if (lowered === null) return silent;
-    if (lowered.value === null) return this.mistake(declaration, formula, `\`${shown(name)}\` needs a known value, and this depends on a free coupling.`);
+    if (lowered.value === null)
+      return this.mistake(declaration, formula, `\`${shown(name)}\` needs a known value, and this depends on a free coupling.`);
     const dimension = isZero(lowered.value) ? null : lowered.dimension;
     if (declaration.kind === 'const') return { kind: 'value', value: lowered.value, dimension };
     if (lowered.value.im === 0) return { kind: 'coupling', value: lowered.value, dimension };

@@ -68,9 +68,7 @@ export interface Kernel {
   readonly element: { readonly out: Whole; readonly in: Whole; readonly span: Span } | null;
 }
 
-export type WaveWords =
-  | { readonly kind: 'full' | 'even' | 'odd' }
-  | { readonly kind: 'm' | 'l'; readonly numbers: readonly Whole[] };
+export type WaveWords = { readonly kind: 'full' | 'even' | 'odd' } | { readonly kind: 'm' | 'l'; readonly numbers: readonly Whole[] };
 
 export type Scheme = { readonly kind: 'minimal' | 'p' | 'kappa'; readonly at: Formula };
 
@@ -104,9 +102,27 @@ export type StatementBody =
   | { readonly kind: 'kinetic'; readonly arguments: readonly Word[]; readonly value: Formula }
   | { readonly kind: 'propagator'; readonly arguments: readonly Word[]; readonly value: Formula }
   | { readonly kind: 'coupling'; readonly name: Word; readonly value: Formula | null }
-  | { readonly kind: 'interaction'; readonly name: Word; readonly kernel: Kernel; readonly value: Formula; readonly order: Whole | null; readonly orderSpan: Span }
-  | { readonly kind: 'cutoff'; readonly name: Word; readonly value: Formula; readonly shape: CutoffShape; readonly shapeSpan: Span; readonly scan: Range | null }
-  | { readonly kind: 'series'; readonly order: Whole; readonly at: { readonly axis: Axis; readonly axisSpan: Span; readonly items: readonly Item[] } | null }
+  | {
+      readonly kind: 'interaction';
+      readonly name: Word;
+      readonly kernel: Kernel;
+      readonly value: Formula;
+      readonly order: Whole | null;
+      readonly orderSpan: Span;
+    }
+  | {
+      readonly kind: 'cutoff';
+      readonly name: Word;
+      readonly value: Formula;
+      readonly shape: CutoffShape;
+      readonly shapeSpan: Span;
+      readonly scan: Range | null;
+    }
+  | {
+      readonly kind: 'series';
+      readonly order: Whole;
+      readonly at: { readonly axis: Axis; readonly axisSpan: Span; readonly items: readonly Item[] } | null;
+    }
   | {
       readonly kind: 'counterterm';
       readonly name: Word;

@@ -51,8 +51,34 @@ const Blank = createToken({ name: 'Blank', pattern: /[ \t\u00a0\r\n]+/, group: L
 const Comment = createToken({ name: 'Comment', pattern: /#[^\r\n]*/, group: Lexer.SKIPPED });
 
 export const allTokens: TokenType[] = [
-  Blank, Comment, Name, DotDot, NumberWord, Text, Plus, Minus, Star, Slash, Caret, Open, Close, OpenBracket, CloseBracket, OpenBrace, Comma,
-  Equals, Less, Percent, Prime, Additive, Multiplicative, Reserved, Int, UnitWord, ObservableWord, ...Object.values(words),
+  Blank,
+  Comment,
+  Name,
+  DotDot,
+  NumberWord,
+  Text,
+  Plus,
+  Minus,
+  Star,
+  Slash,
+  Caret,
+  Open,
+  Close,
+  OpenBracket,
+  CloseBracket,
+  OpenBrace,
+  Comma,
+  Equals,
+  Less,
+  Percent,
+  Prime,
+  Additive,
+  Multiplicative,
+  Reserved,
+  Int,
+  UnitWord,
+  ObservableWord,
+  ...Object.values(words),
 ];
 
 const lexer = new Lexer(allTokens, { positionTracking: 'onlyOffset', ensureOptimizations: false });
@@ -97,11 +123,18 @@ function explainCharacters(text: string, start: number, length: number): Lexical
   const wrong = text.slice(start, start + length);
   if (wrong[0] === '"') {
     const end = text.slice(start).search(/[\r\n]/);
-    return { span: { start, end: end < 0 ? text.length : start + end }, message: 'This path has no closing `"`; a path ends on its own line.' };
+    return {
+      span: { start, end: end < 0 ? text.length : start + end },
+      message: 'This path has no closing `"`; a path ends on its own line.',
+    };
   }
   const mended = [...wrong].every(c => raisedDigits.includes(c))
     ? `^${[...wrong].map(c => raisedDigits.indexOf(c)).join('')}`
     : replacements[wrong];
   if (mended === undefined) return { span, message: `\`${shown(wrong)}\` has no meaning here; take it out.` };
-  return { span, message: `\`${shown(wrong)}\` has no meaning here; write \`${mended}\`.`, mend: { title: `Write \`${mended}\``, span, text: mended } };
+  return {
+    span,
+    message: `\`${shown(wrong)}\` has no meaning here; write \`${mended}\`.`,
+    mend: { title: `Write \`${mended}\``, span, text: mended },
+  };
 }

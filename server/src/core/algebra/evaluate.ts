@@ -19,7 +19,10 @@ export function evaluate(expr: Expr, values: ReadonlyMap<string, Complex>): Comp
       return { re: -x.re, im: x.im === 0 ? 0 : -x.im };
     }
     case 'call':
-      return applyFunction(expr.name, expr.arguments.map(argument => evaluate(argument, values)));
+      return applyFunction(
+        expr.name,
+        expr.arguments.map(argument => evaluate(argument, values)),
+      );
     default:
       return combine(expr.kind, evaluate(expr.left, values), evaluate(expr.right, values));
   }

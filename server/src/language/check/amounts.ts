@@ -6,11 +6,20 @@ import { aReducedMass, anEnergy, anInverseLength, formatDimension, hbarcIn, pure
 import { within, type Model } from './model';
 
 /** A value that a statement asks for: no arguments, everything known. Null with a problem where there is none. */
-export function amount(model: Model, statement: Statement, formula: Formula, what: string): { value: Complex; dimension: Dimension | null } | null {
+export function amount(
+  model: Model,
+  statement: Statement,
+  formula: Formula,
+  what: string,
+): { value: Complex; dimension: Dimension | null } | null {
   const lowered = lower(formula, model.scope.context(statement.span.start));
   if (lowered === null) return null;
   if (lowered.value === null) {
-    return model.reporter.error('value', within(statement, formula.span), `${what} needs a known value, and this depends on a free coupling.`);
+    return model.reporter.error(
+      'value',
+      within(statement, formula.span),
+      `${what} needs a known value, and this depends on a free coupling.`,
+    );
   }
   return { value: lowered.value, dimension: lowered.value.re === 0 && lowered.value.im === 0 ? null : lowered.dimension };
 }
@@ -19,7 +28,8 @@ export function amount(model: Model, statement: Statement, formula: Formula, wha
 export function realAmount(model: Model, statement: Statement, formula: Formula, wanted: Dimension, what: string): number | null {
   const found = amount(model, statement, formula, what);
   if (found === null) return null;
-  if (found.dimension !== null && !model.dimensions.agree(found.dimension, wanted)) return mismatch(model, statement, formula, found.dimension, wanted, what);
+  if (found.dimension !== null && !model.dimensions.agree(found.dimension, wanted))
+    return mismatch(model, statement, formula, found.dimension, wanted, what);
   return realPart(model, statement, formula, found.value, what);
 }
 
@@ -40,7 +50,11 @@ export function momentum(model: Model, statement: Statement, formula: Formula, w
   const span = within(statement, formula.span);
   const own = `${system.length}^-1`;
   if (!sameDimension(dimension, pure)) {
-    return model.reporter.error('dimension', span, `${what} is a momentum, in \`${own}\` or \`${system.energy}\`, and this is ${dimensions.name(dimension)}.`);
+    return model.reporter.error(
+      'dimension',
+      span,
+      `${what} is a momentum, in \`${own}\` or \`${system.energy}\`, and this is ${dimensions.name(dimension)}.`,
+    );
   }
   const written = model.text.slice(span.start, span.end);
   const number = formula.kind === 'number' || formula.kind === 'group' ? written : `(${written})`;
@@ -63,7 +77,11 @@ export function massAmount(model: Model, statement: Statement, formula: Formula)
   if (sameDimension(dimension, anEnergy)) return { mu: value / hbarc ** 2, rest: value };
   if (sameDimension(dimension, aReducedMass)) return { mu: value, rest: value * hbarc ** 2 };
   const units = `\`${system.energy}\`, \`u\`, \`me\` or \`${formatDimension(aReducedMass, system)}\``;
-  return model.reporter.error('dimension', span, `A mass is an energy (mc²) or μ/ħ², in ${units}, and this is ${model.dimensions.name(dimension)}.`);
+  return model.reporter.error(
+    'dimension',
+    span,
+    `A mass is an energy (mc²) or μ/ħ², in ${units}, and this is ${model.dimensions.name(dimension)}.`,
+  );
 }
 
 function realPart(model: Model, statement: Statement, formula: Formula, value: Complex, what: string): number | null {
@@ -73,5 +91,9 @@ function realPart(model: Model, statement: Statement, formula: Formula, value: C
 
 function mismatch(model: Model, statement: Statement, formula: Formula, found: Dimension, wanted: Dimension, what: string): null {
   const { dimensions } = model;
-  return model.reporter.error('dimension', within(statement, formula.span), `${what} is ${dimensions.name(wanted)}, and this is ${dimensions.name(found)}.`);
+  return model.reporter.error(
+    'dimension',
+    within(statement, formula.span),
+    `${what} is ${dimensions.name(wanted)}, and this is ${dimensions.name(found)}.`,
+  );
 }

@@ -42,13 +42,15 @@ export function checkModel(block: ModelBlock, merged: ModelBlock, file: FileView
   const spec = readModel(model, mass, file, defaults, overrides);
   // Where the units themselves are wrong, no other dimension can be judged.
   const units = statementsOf(merged, 'units')[0]?.span;
-  const judged = ({ code, span }: Problem) => code !== 'dimension' || (units !== undefined && span.start >= units.start && span.end <= units.end);
+  const judged = ({ code, span }: Problem) =>
+    code !== 'dimension' || (units !== undefined && span.start >= units.start && span.end <= units.end);
   const problems = sound.units ? reporter.problems : reporter.problems.filter(judged);
   const healthy = sound.frame && !problems.some(({ severity }) => severity === 'error') && merged.broken.length === 0;
   return { name: block.name.name, places: placesOf(file.text, block), problems: inOrder(problems), spec: healthy ? spec : null };
 }
 
-const inOrder = (problems: readonly Problem[]): Problem[] => [...problems].sort((a, b) => a.span.start - b.span.start || a.span.end - b.span.end);
+const inOrder = (problems: readonly Problem[]): Problem[] =>
+  [...problems].sort((a, b) => a.span.start - b.span.start || a.span.end - b.span.end);
 
 function openModel(merged: ModelBlock, file: FileView, reporter: Reporter) {
   const frame = readFrame(merged, reporter);
@@ -59,7 +61,17 @@ function openModel(merged: ModelBlock, file: FileView, reporter: Reporter) {
   const outer = system === null ? file.scope : new Scope(file.constants, outside);
   const around = { system, dimensions, report: reporter.add, outer, mu: () => mass.meaning(), open: file.open };
   const scope = new Scope(modelNames(merged, reporter), around);
-  const model: Model = { text: file.text, block: merged, system, dimensions, scope, space: frame.space, wave: frame.wave, channels: frame.channels, reporter };
+  const model: Model = {
+    text: file.text,
+    block: merged,
+    system,
+    dimensions,
+    scope,
+    space: frame.space,
+    wave: frame.wave,
+    channels: frame.channels,
+    reporter,
+  };
   return { model, mass, sound: { units: frame.unitsSound, frame: frame.sound } };
 }
 
@@ -83,8 +95,12 @@ function readModel(model: Model, mass: ReducedMass, file: FileView, defaults: De
   const isBroken = (word: string) => block.broken.some(broken => broken.word === word);
   const order = declaredOrder(model, defaults);
   const open = file.open || isBroken('interaction');
-  const counterterms = statementsOf(block, 'counterterm').map(statement => readCounterterm(model, statement, { interactions, open, order, mu }));
-  const expectations = statementsOf(block, 'expect').map(statement => readExpectation(model, statement, kinematics, overrides.order === null ? order : null));
+  const counterterms = statementsOf(block, 'counterterm').map(statement =>
+    readCounterterm(model, statement, { interactions, open, order, mu }),
+  );
+  const expectations = statementsOf(block, 'expect').map(statement =>
+    readExpectation(model, statement, kinematics, overrides.order === null ? order : null),
+  );
   reportLater(model, kinematics);
   reportUnsetCouplings(model);
   reportMissing(model, mass, kinetic !== null, file.open);
@@ -144,7 +160,9 @@ function readInteractions(model: Model, sampler: Sampler): Map<string, Interacti
     orders.set(name, first);
     if (statement.body.kernel.element === null || first === order) continue;
     const span = { start: statement.span.start + statement.body.orderSpan.start, end: statement.span.start + statement.body.orderSpan.end };
-    model.reporter.error('value', span, `All elements of \`${shown(name)}\` have the same order; its first one has order ${first}.`, { subject: name });
+    model.reporter.error('value', span, `All elements of \`${shown(name)}\` have the same order; its first one has order ${first}.`, {
+      subject: name,
+    });
   }
   return interactions;
 }
@@ -159,7 +177,11 @@ function reportMissing({ block, reporter }: Model, mass: ReducedMass, hasKinetic
   const has = (word: string) => [...block.statements, ...block.broken].some(statement => statement.word === word);
   const own = `\`${shown(block.name.name)}\``;
   if (!has('interaction') && !(open && block.from !== null)) {
-    reporter.error('missing', block.name.span, `The model ${own} has no interaction; write for example \`interaction contact(p, k) = c0\`.`);
+    reporter.error(
+      'missing',
+      block.name.span,
+      `The model ${own} has no interaction; write for example \`interaction contact(p, k) = c0\`.`,
+    );
   }
   const usesMu = mass.asked || statementsOf(block, 'counterterm').some(statement => statement.body.scheme.kind === 'kappa');
   if (has('mass') || (hasKinetic && !usesMu) || (open && block.from !== null)) return;

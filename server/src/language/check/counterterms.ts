@@ -67,10 +67,18 @@ function readMonomial(model: Model, statement: CountertermStatement, written: Wr
   const place = within(statement, written.span);
   const text = shown(model.text.slice(place.start, place.end));
   if (exponents.reduce((sum, n) => sum + n, 0) === 1) {
-    return model.reporter.error('value', place, `\`${text}\` has no loop and does not diverge; a counterterm cancels a product such as \`${text.split('^')[0]}^2\`.`);
+    return model.reporter.error(
+      'value',
+      place,
+      `\`${text}\` has no loop and does not diverge; a counterterm cancels a product such as \`${text.split('^')[0]}^2\`.`,
+    );
   }
   if (vertices.order !== null && order > vertices.order) {
-    return model.reporter.error('value', place, `\`${text}\` is of order ${order}, and the series goes to ${vertices.order}; write \`series to ${order}\` or take it out.`);
+    return model.reporter.error(
+      'value',
+      place,
+      `\`${text}\` is of order ${order}, and the series goes to ${vertices.order}; write \`series to ${order}\` or take it out.`,
+    );
   }
   return exponents;
 }
@@ -82,7 +90,9 @@ function interactionCalled(model: Model, statement: CountertermStatement, word: 
   const near = suggestion(word.name, vertices.interactions.keys());
   const isValue = model.scope.has(word.name);
   const why = isValue ? ' is a value, not an interaction' : ' is no interaction of this model';
-  return model.reporter.error('unknown-name', within(statement, word.span), `\`${shown(word.name)}\`${why}${near || '.'}`, { subject: word.name });
+  return model.reporter.error('unknown-name', within(statement, word.span), `\`${shown(word.name)}\`${why}${near || '.'}`, {
+    subject: word.name,
+  });
 }
 
 function readScale(model: Model, statement: CountertermStatement, vertices: Vertices): number | null {

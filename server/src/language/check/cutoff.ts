@@ -23,7 +23,11 @@ export function readCutoff(model: Model, defaults: Defaults, overrides: Override
   const value = positive(model, statement, body.value, 'The cutoff');
   const scan = body.scan === null ? null : readScan(model, statement, body.scan);
   if (body.shape.kind !== 'sharp' && !(body.shape.n >= 1 && body.shape.n <= largestExponent)) {
-    return model.reporter.error('value', within(statement, body.shapeSpan), `The exponent of \`${body.shape.kind}(n)\` is from 1 to ${largestExponent}.`);
+    return model.reporter.error(
+      'value',
+      within(statement, body.shapeSpan),
+      `The exponent of \`${body.shape.kind}(n)\` is from 1 to ${largestExponent}.`,
+    );
   }
   if (value === null || (body.scan !== null && scan === null)) return null;
   return { name: body.name.name, value: override ?? value, shape: body.shape, declared: override === null, scan };
@@ -38,7 +42,8 @@ function positive(model: Model, statement: Statement, formula: BodyOf<'cutoff'>[
 function readScan(model: Model, statement: Statement, range: NonNullable<BodyOf<'cutoff'>['scan']>): CutoffSpec['scan'] {
   const from = positive(model, statement, range.from, 'The start of a scan');
   const to = positive(model, statement, range.to, 'The end of a scan');
-  const points = range.points === null ? 24 : wholeBetween(model.reporter, statement, range.points, 2, mostPoints, 'The number of points of a scan');
+  const points =
+    range.points === null ? 24 : wholeBetween(model.reporter, statement, range.points, 2, mostPoints, 'The number of points of a scan');
   if (from === null || to === null || points === null) return null;
   if (from < to) return { from, to, points };
   return model.reporter.error('value', within(statement, range.to.span), 'A scan goes upwards: its end lies above its start.');

@@ -31,7 +31,9 @@ function collect(block: Pick<ModelBlock, 'statements' | 'broken'>, reporter: Rep
     if (body.kind === 'cutoff') cutoff ??= name;
     else declarations.set(name, { kind: body.kind, name, formula: body.value, offset: statement.span.start, nameSpan: span });
   }
-  const broken = new Set(block.broken.flatMap(({ word, name }) => (name !== null && (word === 'const' || word === 'coupling') ? [name] : [])));
+  const broken = new Set(
+    block.broken.flatMap(({ word, name }) => (name !== null && (word === 'const' || word === 'coupling') ? [name] : [])),
+  );
   return { declarations, broken, cutoff };
 }
 

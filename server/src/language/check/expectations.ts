@@ -10,7 +10,12 @@ import { onShellPoint, type Kinematics } from './points';
 type ExpectStatement = Statement<BodyOf<'expect'>>;
 
 /** The expectation as the core wants it, or null where it has a mistake. `order`: that of the model's series, null where unknown. */
-export function readExpectation(model: Model, statement: ExpectStatement, kinematics: Kinematics, order: number | null): ExpectationSpec | null {
+export function readExpectation(
+  model: Model,
+  statement: ExpectStatement,
+  kinematics: Kinematics,
+  order: number | null,
+): ExpectationSpec | null {
   const { expectation } = statement.body;
   switch (expectation.kind) {
     case 'finite': {
@@ -46,7 +51,11 @@ function readObservable(
   if (measured === null || width === null) return null;
   const { value, point } = measured;
   if (percent && value === 0) {
-    return model.reporter.error('value', within(statement, tolerance.span), 'A percentage of 0 allows nothing; give the tolerance as an amount.');
+    return model.reporter.error(
+      'value',
+      within(statement, tolerance.span),
+      'A percentage of 0 allows nothing; give the tolerance as an amount.',
+    );
   }
   return { kind: 'observable', observable: observable.name, value, tolerance: percent ? (Math.abs(value) * width) / 100 : width, point };
 }
@@ -64,18 +73,25 @@ export function measurement(
   const { reporter } = model;
   const own = within(statement, span);
   const only1 = name === 'transmission' || name === 'reflection';
-  if (only1 && !(model.space === 1 && model.wave.kind === 'full')) return reporter.error('value', own, `\`${name}\` belongs to dimension 1 with \`wave full\`.`);
+  if (only1 && !(model.space === 1 && model.wave.kind === 'full'))
+    return reporter.error('value', own, `\`${name}\` belongs to dimension 1 with \`wave full\`.`);
   if (name === 'phase_shift' && model.space === 1 && model.wave.kind === 'full') {
-    return reporter.error('value', own, 'A phase shift belongs to a single wave; choose `wave even` or `wave odd`, or expect the transmission.');
+    return reporter.error(
+      'value',
+      own,
+      'A phase shift belongs to a single wave; choose `wave even` or `wave odd`, or expect the transmission.',
+    );
   }
   const { at } = observables[name];
   if (at && written === null) return reporter.error('syntax', own, `\`${name}\` depends on the momentum; write \`at p = …\` behind it.`);
-  if (!at && written !== null) return reporter.error('syntax', within(statement, written.span), `\`${name}\` is one number for all momenta; take the \`at …\` out.`);
+  if (!at && written !== null)
+    return reporter.error('syntax', within(statement, written.span), `\`${name}\` is one number for all momenta; take the \`at …\` out.`);
   const value = realAmount(model, statement, formula, observableDimension(model, name), sentenceName(name));
   const point = written && onShellPoint(model, statement, written, kinematics);
   if (value === null || (written !== null && point === null)) return null;
   const place = within(statement, formula.span);
-  if (name === 'binding_energy' && !(value > 0)) return reporter.error('value', place, `A binding energy is positive, and this is ${value}.`);
+  if (name === 'binding_energy' && !(value > 0))
+    return reporter.error('value', place, `A binding energy is positive, and this is ${value}.`);
   if (only1 && !(value >= 0 && value <= 1)) return reporter.error('value', place, `A probability is from 0 to 1, and this is ${value}.`);
   return { value, point };
 }

@@ -57,11 +57,19 @@ function readUnits(statement: Statement<BodyOf<'units'>>, reporter: Reporter): U
   if (system === null) return null;
   const { energy, length } = system;
   if (!isEnergyUnit(energy.name)) {
-    reporter.error('dimension', within(statement, energy.span), `The first unit is one of energy, and \`${energy.name}\` is a length; write for example \`units MeV, fm\`.`);
+    reporter.error(
+      'dimension',
+      within(statement, energy.span),
+      `The first unit is one of energy, and \`${energy.name}\` is a length; write for example \`units MeV, fm\`.`,
+    );
     return undefined;
   }
   if (!isLengthUnit(length.name)) {
-    reporter.error('dimension', within(statement, length.span), `The second unit is one of length, and \`${length.name}\` is an energy; write for example \`units MeV, fm\`.`);
+    reporter.error(
+      'dimension',
+      within(statement, length.span),
+      `The second unit is one of length, and \`${length.name}\` is an energy; write for example \`units MeV, fm\`.`,
+    );
     return undefined;
   }
   return { energy: energy.name, length: length.name };
@@ -86,7 +94,8 @@ function readWave(statement: Statement<BodyOf<'wave'>>, space: 1 | 2 | 3, report
   for (const [i, number] of wave.numbers.entries()) {
     const at: Span = within(statement, number.span);
     if (number.value > highestWave) return reporter.error('value', at, `The highest wave is ${highestWave}.`);
-    if (wave.numbers.findIndex(other => other.value === number.value) < i) return reporter.error('duplicate', at, `The wave ${number.value} is in the list already.`);
+    if (wave.numbers.findIndex(other => other.value === number.value) < i)
+      return reporter.error('duplicate', at, `The wave ${number.value} is in the list already.`);
   }
   if (wave.numbers.length > 1) {
     return reporter.error('not-evaluated', place, 'Coupled channels are read but not evaluated by this version; give a single wave.');

@@ -11,7 +11,12 @@ import { evenIn, hermitian, parityKept, realIn, transferHermitian, type Sampler,
 type InteractionStatement = Statement<BodyOf<'interaction'>>;
 
 const argumentDimension: Readonly<Record<string, Dimension>> = {
-  p: anInverseLength, k: anInverseLength, q: anInverseLength, x: aLength, r: aLength, E: anEnergy,
+  p: anInverseLength,
+  k: anInverseLength,
+  q: anInverseLength,
+  x: aLength,
+  r: aLength,
+  E: anEnergy,
 };
 
 /** The highest place in the power counting. */
@@ -30,13 +35,23 @@ export function readInteraction(model: Model, statement: InteractionStatement, s
 }
 
 /** A kernel's expression, its dimension checked. */
-function readKernel(model: Model, statement: InteractionStatement, args: KernelArguments, words: readonly Word[], formula: Formula): Expr | null {
+function readKernel(
+  model: Model,
+  statement: InteractionStatement,
+  args: KernelArguments,
+  words: readonly Word[],
+  formula: Formula,
+): Expr | null {
   const inPosition = args === 'x' || args === 'r';
   const delta: Context['delta'] = inPosition ? { of: args, dimension: model.space } : null;
   const lowered = lower(formula, kernelContext(model, statement, words, delta));
   if (lowered === null) return null;
   if (inPosition && !deltaIsLinear(lowered.expr)) {
-    return model.reporter.error('value', within(statement, formula.span), '`delta` stands in a sum or once in a product, not in a power, a denominator or another function.');
+    return model.reporter.error(
+      'value',
+      within(statement, formula.span),
+      '`delta` stands in a sum or once in a product, not in a power, a denominator or another function.',
+    );
   }
   const wanted = inPosition ? anEnergy : product(anEnergy, aLength, model.space);
   if (lowered.dimension !== null && !model.dimensions.agree(lowered.dimension, wanted)) {
@@ -61,7 +76,8 @@ function readOrder(model: Model, statement: InteractionStatement): number | null
   const { order, orderSpan } = statement.body;
   if (order === null) return 1;
   if (order.value === 0) {
-    const message = 'An interaction of order 0, summed to all orders, is read but not evaluated by this version; give it an order of 1 or more.';
+    const message =
+      'An interaction of order 0, summed to all orders, is read but not evaluated by this version; give it an order of 1 or more.';
     return model.reporter.error('not-evaluated', within(statement, orderSpan), message, { subject: statement.body.name.name });
   }
   return wholeBetween(model.reporter, statement, order, 1, highestOrder, 'The order of an interaction');
@@ -83,15 +99,25 @@ function fitsSpace(model: Model, statement: InteractionStatement, kernel: Kernel
   const ofMomenta = kernel.arguments === 'pk' || kernel.arguments === 'pkE';
   if (element === null) {
     if (channels === 1 || !ofMomenta) return true;
-    reporter.error('value', within(statement, statement.body.name.span), 'In coupled channels a kernel of `(p, k)` is an element: write `(p, k)[a, b]`.');
+    reporter.error(
+      'value',
+      within(statement, statement.body.name.span),
+      'In coupled channels a kernel of `(p, k)` is an element: write `(p, k)[a, b]`.',
+    );
     return false;
   }
   if (!ofMomenta) {
-    reporter.error('value', within(statement, element.span), `A kernel of \`(${kernel.arguments})\` acts in every channel; take the \`[a, b]\` out.`);
+    reporter.error(
+      'value',
+      within(statement, element.span),
+      `A kernel of \`(${kernel.arguments})\` acts in every channel; take the \`[a, b]\` out.`,
+    );
     return false;
   }
   return [element.out, element.in].every(
-    channel => wholeBetween(reporter, statement, channel, 1, channels, `The number of a channel${channels === 1 ? ' of a single wave' : ''}`) !== null,
+    channel =>
+      wholeBetween(reporter, statement, channel, 1, channels, `The number of a channel${channels === 1 ? ' of a single wave' : ''}`) !==
+      null,
   );
 }
 
@@ -109,7 +135,12 @@ function isSymmetric(model: Model, statement: InteractionStatement, kernel: Expr
     return false;
   }
   if (verdict === 'fails') {
-    reporter.error('not-hermitian', place, `\`${own}\` is not Hermitian: ${conditions[args === 'q' && space === 1 ? 'q1' : args]}.`, subject);
+    reporter.error(
+      'not-hermitian',
+      place,
+      `\`${own}\` is not Hermitian: ${conditions[args === 'q' && space === 1 ? 'q1' : args]}.`,
+      subject,
+    );
     return false;
   }
   if (wave.kind !== 'even' && wave.kind !== 'odd') return true;

@@ -11,18 +11,35 @@ import type { Kinematics } from './points';
 export function reportLater(model: Model, kinematics: Kinematics): void {
   const { block, reporter } = model;
   for (const statement of statementsOf(block, 'propagator')) {
-    lower(statement.body.value, model.scope.context(statement.span.start, new Map([['k', anInverseLength], ['E', anEnergy]])));
-    reporter.error('not-evaluated', keyword(statement), 'A `propagator` of its own is read but not evaluated by this version; take it out to look at 1/(E − kinetic(k)).');
+    lower(
+      statement.body.value,
+      model.scope.context(
+        statement.span.start,
+        new Map([
+          ['k', anInverseLength],
+          ['E', anEnergy],
+        ]),
+      ),
+    );
+    reporter.error(
+      'not-evaluated',
+      keyword(statement),
+      'A `propagator` of its own is read but not evaluated by this version; take it out to look at 1/(E − kinetic(k)).',
+    );
   }
   for (const statement of statementsOf(block, 'fix')) {
     const { name, observable, value, point } = statement.body;
     checkFixed(model, within(statement, name.span), name);
     measurement(model, statement, observable, value, point, kinematics);
-    reporter.error('not-evaluated', keyword(statement), '`fix` is read but not evaluated by this version; give the coupling a value.', { subject: name.name });
+    reporter.error('not-evaluated', keyword(statement), '`fix` is read but not evaluated by this version; give the coupling a value.', {
+      subject: name.name,
+    });
   }
   for (const statement of statementsOf(block, 'data')) {
     for (const { name } of statement.body.columns) checkColumn(model, within(statement, name.span), name);
-    reporter.error('not-evaluated', keyword(statement), '`data` is read but not evaluated by this version; give the couplings values.', { subject: statement.body.name.name });
+    reporter.error('not-evaluated', keyword(statement), '`data` is read but not evaluated by this version; give the couplings values.', {
+      subject: statement.body.name.name,
+    });
   }
 }
 
@@ -47,9 +64,16 @@ function checkFixed(model: Model, span: { start: number; end: number }, word: Wo
   if (declaration === undefined) {
     if (model.scope.names.broken.has(word.name)) return;
     const free = [...model.scope.names.declarations.values()].filter(isFree).map(({ name }) => name);
-    model.reporter.error('unknown-name', span, `\`${shown(word.name)}\` is no coupling of this model${suggestion(word.name, free) || '.'}`, { subject: word.name });
+    model.reporter.error(
+      'unknown-name',
+      span,
+      `\`${shown(word.name)}\` is no coupling of this model${suggestion(word.name, free) || '.'}`,
+      { subject: word.name },
+    );
   } else if (!isFree(declaration)) {
-    model.reporter.error('value', span, `\`${shown(word.name)}\` has a value already; only a \`free\` coupling can be fixed.`, { subject: word.name });
+    model.reporter.error('value', span, `\`${shown(word.name)}\` has a value already; only a \`free\` coupling can be fixed.`, {
+      subject: word.name,
+    });
   }
 }
 
@@ -60,5 +84,10 @@ const axes = ['p', 'E', 'E_lab'];
 function checkColumn(model: Model, span: { start: number; end: number }, word: Word): void {
   if (axes.includes(word.name) || word.name === 'sigma' || isObservable(word.name)) return;
   const near = suggestion(word.name, [...axes, 'sigma', ...Object.keys(observables)]);
-  model.reporter.error('unknown-name', span, `\`${shown(word.name)}\` is no column of data${near || '; there are p, E, E_lab, sigma and the observables.'}`, { subject: word.name });
+  model.reporter.error(
+    'unknown-name',
+    span,
+    `\`${shown(word.name)}\` is no column of data${near || '; there are p, E, E_lab, sigma and the observables.'}`,
+    { subject: word.name },
+  );
 }

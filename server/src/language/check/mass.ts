@@ -61,6 +61,7 @@ export function readKinetic(model: Model, sampler: Sampler): Expr | null | undef
   }
   const verdict = realIn(lowered.expr, 'k', sampler);
   if (verdict === 'holds') return lowered.expr;
-  const message = verdict === 'fails' ? 'A kinetic energy is real.' : 'The kinetic energy has no finite value at any of the points where it was tried.';
+  const message =
+    verdict === 'fails' ? 'A kinetic energy is real.' : 'The kinetic energy has no finite value at any of the points where it was tried.';
   return model.reporter.error('value', place, message) ?? undefined;
 }

@@ -41,18 +41,31 @@ export class Reporter {
 }
 
 /** A span of a statement as one of the text. */
-export const within = (statement: Statement, span: Span): Span => ({ start: statement.span.start + span.start, end: statement.span.start + span.end });
+export const within = (statement: Statement, span: Span): Span => ({
+  start: statement.span.start + span.start,
+  end: statement.span.start + span.end,
+});
 
 /** The reserved word of a statement. */
 export const keyword = (statement: Statement): Span => ({ start: statement.span.start, end: statement.span.start + statement.word.length });
 
 /** The statements of one kind, in the order of the text. */
-export function statementsOf<K extends StatementKind>(block: { readonly statements: readonly Statement[] }, kind: K): Statement<BodyOf<K>>[] {
+export function statementsOf<K extends StatementKind>(
+  block: { readonly statements: readonly Statement[] },
+  kind: K,
+): Statement<BodyOf<K>>[] {
   return block.statements.filter((statement): statement is Statement<BodyOf<K>> => statement.body.kind === kind);
 }
 
 /** A whole number between `least` and `most`, or null with a problem that says `what` it is. */
-export function wholeBetween(reporter: Reporter, statement: Statement, whole: Whole, least: number, most: number, what: string): number | null {
+export function wholeBetween(
+  reporter: Reporter,
+  statement: Statement,
+  whole: Whole,
+  least: number,
+  most: number,
+  what: string,
+): number | null {
   if (whole.value >= least && whole.value <= most) return whole.value;
   const limit = whole.value < least ? `at least ${least}` : `at most ${most}`;
   return reporter.error('value', within(statement, whole.span), `${what} is ${limit}.`);

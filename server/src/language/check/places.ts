@@ -22,4 +22,8 @@ export function placesOf(text: string, block: ModelBlock): Places {
 
 /** The statement without its first word and comments, white space folded. */
 export const expectationText = (text: string, { span, word }: Statement): string =>
-  text.slice(span.start + word.length, span.end).replace(/#[^\r\n]*/g, ' ').replace(/[ \t\u00a0\r\n]+/g, ' ').trim();
+  text
+    .slice(span.start + word.length, span.end)
+    .replace(/#[^\r\n]*/g, ' ')
+    .replace(/[ \t\u00a0\r\n]+/g, ' ')
+    .trim();

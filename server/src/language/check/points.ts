@@ -30,7 +30,13 @@ export function onShellPoint(model: Model, statement: Statement, point: Point, k
 }
 
 /** The points of `at p = LIST`, or null with a problem. */
-export function onShellPoints(model: Model, statement: Statement, axis: Axis, items: readonly Item[], kinematics: Kinematics): OnShellPoint[] | null {
+export function onShellPoints(
+  model: Model,
+  statement: Statement,
+  axis: Axis,
+  items: readonly Item[],
+  kinematics: Kinematics,
+): OnShellPoint[] | null {
   const points: (OnShellPoint | null)[] = [];
   for (const item of items) {
     if (item.kind === 'value') {
@@ -40,9 +46,11 @@ export function onShellPoints(model: Model, statement: Statement, axis: Axis, it
     }
     const from = coordinate(model, statement, axis, item.from);
     const to = coordinate(model, statement, axis, item.to);
-    const count = item.points === null ? 16 : wholeBetween(model.reporter, statement, item.points, 2, mostPoints, 'The number of points of a range');
+    const count =
+      item.points === null ? 16 : wholeBetween(model.reporter, statement, item.points, 2, mostPoints, 'The number of points of a range');
     if (from === null || to === null || count === null) points.push(null);
-    else if (!(from < to)) points.push(model.reporter.error('value', within(statement, item.to.span), 'A range goes upwards: its end lies above its start.'));
+    else if (!(from < to))
+      points.push(model.reporter.error('value', within(statement, item.to.span), 'A range goes upwards: its end lies above its start.'));
     else {
       for (let i = 0; i < count; i++) {
         const value = i === count - 1 ? to : from + ((to - from) * i) / (count - 1);
@@ -53,8 +61,15 @@ export function onShellPoints(model: Model, statement: Statement, axis: Axis, it
     }
   }
   if (points.length > mostPoints && !points.includes(null)) {
-    const all = { start: items[0].kind === 'value' ? items[0].value.span.start : items[0].from.span.start, end: statement.span.end - statement.span.start };
-    return model.reporter.error('value', within(statement, all), `A series is looked at in at most ${mostPoints} points, and these are ${points.length}.`);
+    const all = {
+      start: items[0].kind === 'value' ? items[0].value.span.start : items[0].from.span.start,
+      end: statement.span.end - statement.span.start,
+    };
+    return model.reporter.error(
+      'value',
+      within(statement, all),
+      `A series is looked at in at most ${mostPoints} points, and these are ${points.length}.`,
+    );
   }
   return points.includes(null) ? null : (points as OnShellPoint[]);
 }
@@ -64,17 +79,32 @@ function coordinate(model: Model, statement: Statement, axis: Axis, formula: For
   return realAmount(model, statement, formula, anEnergy, axis === 'E' ? 'The energy' : 'The energy in the laboratory');
 }
 
-function convert(model: Model, statement: Statement, axis: Axis, value: number, formula: Formula, kinematics: Kinematics): OnShellPoint | null {
+function convert(
+  model: Model,
+  statement: Statement,
+  axis: Axis,
+  value: number,
+  formula: Formula,
+  kinematics: Kinematics,
+): OnShellPoint | null {
   const span = within(statement, formula.span);
   const { reporter } = model;
   if (axis === 'E') {
     if (value === 0) return reporter.error('value', span, 'E = 0 is the threshold itself; take an energy above or below it.');
     if (value < 0) return { p: null, E: value };
     const p = momentumAt(value, kinematics);
-    if (p === null) return Number.isNaN(kinematics.mu) && kinematics.kinetic === null ? null : reporter.error('value', span, 'No momentum has this kinetic energy.');
+    if (p === null)
+      return Number.isNaN(kinematics.mu) && kinematics.kinetic === null
+        ? null
+        : reporter.error('value', span, 'No momentum has this kinetic energy.');
     return belowEdge(p) ? { p, E: value } : beyond();
   }
-  if (!(value > 0)) return reporter.error('value', span, `${axis === 'p' ? 'An on-shell momentum' : 'An energy in the laboratory'} is positive, and this is ${value}.`);
+  if (!(value > 0))
+    return reporter.error(
+      'value',
+      span,
+      `${axis === 'p' ? 'An on-shell momentum' : 'An energy in the laboratory'} is positive, and this is ${value}.`,
+    );
   const p = axis === 'p' ? value : laboratory(value);
   if (p === null) return null;
   return belowEdge(p) ? { p, E: null } : beyond();
@@ -86,8 +116,10 @@ function convert(model: Model, statement: Statement, axis: Axis, value: number, 
     return reporter.error('value', span, `This momentum lies beyond the sharp cutoff, ${kinematics.edge}.`);
   }
   function laboratory(T: number): number | null {
-    if (model.system === null) return reporter.error('value', span, '`E_lab` needs masses with units: in a natural model give `at p` or `at E`.');
-    if (kinematics.masses === null) return reporter.error('missing', span, '`E_lab` needs both masses: write `mass A, B`, where A hits B at rest.');
+    if (model.system === null)
+      return reporter.error('value', span, '`E_lab` needs masses with units: in a natural model give `at p` or `at E`.');
+    if (kinematics.masses === null)
+      return reporter.error('missing', span, '`E_lab` needs both masses: write `mass A, B`, where A hits B at rest.');
     return laboratoryMomentum(T, kinematics.masses) / hbarcIn(model.system);
   }
 }

@@ -16,7 +16,9 @@ export interface Sampler {
 export type Verdict = 'holds' | 'fails' | 'no-value';
 
 const momenta = [
-  [0.3127, 0.1371], [0.01713, 0.02917], [0.7193, 0.4311],
+  [0.3127, 0.1371],
+  [0.01713, 0.02917],
+  [0.7193, 0.4311],
 ] as const;
 
 /** V(p, k) = conj V(k, p). In dimension 1 (`signed`) momenta of both signs. */
@@ -95,7 +97,12 @@ function withoutDelta(expr: Expr, scale: number): Expr {
     case 'negate':
       return negate(withoutDelta(expr.argument, scale));
     case 'call': {
-      if (expr.name !== 'delta') return call(expr.name, expr.arguments.map(argument => withoutDelta(argument, scale)), expr.primes);
+      if (expr.name !== 'delta')
+        return call(
+          expr.name,
+          expr.arguments.map(argument => withoutDelta(argument, scale)),
+          expr.primes,
+        );
       const y = binary('multiply', expr.arguments[0], number(scale / 3));
       const square = binary('multiply', y, y);
       const gaussian = call('exp', [negate(square)]);

@@ -10,12 +10,22 @@ export const highestOrder = 8;
  * The order and the on-shell points of the series. Where the model gives no points, one stands for all: a twentieth of the cutoff.
  * Null where there is a mistake.
  */
-export function readSeries(model: Model, cutoff: CutoffSpec | null, kinematics: Kinematics, defaults: Defaults, overrides: Overrides): SeriesSpec | null {
+export function readSeries(
+  model: Model,
+  cutoff: CutoffSpec | null,
+  kinematics: Kinematics,
+  defaults: Defaults,
+  overrides: Overrides,
+): SeriesSpec | null {
   const statement = statementsOf(model.block, 'series')[0];
   const typical = cutoff === null ? null : [{ p: cutoff.value / 20, E: null }];
   if (overrides.order !== null && !(Number.isInteger(overrides.order) && overrides.order >= 1 && overrides.order <= highestOrder)) {
     const place = statement === undefined ? model.block.name.span : keyword(statement);
-    return model.reporter.error('value', place, `The order that is set over the model is a whole number from 1 to ${highestOrder}, not ${overrides.order}.`);
+    return model.reporter.error(
+      'value',
+      place,
+      `The order that is set over the model is a whole number from 1 to ${highestOrder}, not ${overrides.order}.`,
+    );
   }
   if (statement === undefined) return typical && { order: overrides.order ?? defaults.order, declared: false, points: typical };
   const { at, order: written } = statement.body;
