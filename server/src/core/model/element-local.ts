@@ -17,7 +17,8 @@ export function localElements(kernel: Expr, argument: 'q' | 'x' | 'r', spec: Mod
   const { dimension, wave } = spec;
   if (argument === 'q') {
     const pole = findPole(kernel, ['q'], dimension === 1);
-    if (pole) throw new KernelError('value', `The kernel is infinite at ${pole}: such a pole has no meaning without a rule for passing it.`);
+    if (pole)
+      throw new KernelError('value', `The kernel is infinite at ${pole}: such a pole has no meaning without a rule for passing it.`);
   }
   const { contacts, pieces } = argument === 'q' ? transferPieces(kernel, dimension) : transform(kernel, dimension);
   const all = [...pieces, ...contacts.filter(c => c.centre !== 0).map(shiftedContact)];
@@ -45,7 +46,11 @@ function shapeOf(piece: LocalPiece): LocalShape {
     tail.map(t => {
       const sign = direction < 0 && odd ? -1 : 1;
       const { re, im } = t.coefficient;
-      return { ...t, coefficient: { re: sign * (re * c.re - im * c.im) + 0, im: sign * (re * c.im + im * c.re) + 0 }, phase: t.phase - direction * centre };
+      return {
+        ...t,
+        coefficient: { re: sign * (re * c.re - im * c.im) + 0, im: sign * (re * c.im + im * c.re) + 0 },
+        phase: t.phase - direction * centre,
+      };
     });
   return { kind: 'local', tail: terms(1), backwardTail: terms(-1), transfer, smooth, origin, scale };
 }

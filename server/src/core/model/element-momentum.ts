@@ -44,7 +44,11 @@ function powers(x: Float64Array, n: number): Float64Array {
 /** Any other kernel in p and k (and E), evaluated as it stands. */
 export function generalElement(kernel: Expr, { dimension, wave }: ModelSpec): Element {
   const pole = findPole(kernel, ['p', 'k'], dimension === 1);
-  if (pole) throw new KernelError('value', `The kernel is infinite at real momenta, for example at ${pole}: such a pole has no meaning without a rule for passing it.`);
+  if (pole)
+    throw new KernelError(
+      'value',
+      `The kernel is infinite at real momenta, for example at ${pole}: such a pole has no meaning without a rule for passing it.`,
+    );
   const expr = wave.kind === 'even' || wave.kind === 'odd' ? parityPart(kernel, wave.kind) : kernel;
   const compiled = compile(expr, specialFunctions);
   const evaluate = (p: Float64Array, k: Float64Array, E: number) => {

@@ -48,7 +48,8 @@ function elementsOf(interaction: InteractionSpec, kernel: InteractionSpec['kerne
     const polynomial = polynomialIn(kernel, ['p', 'k', 'E']);
     if (!polynomial) return [generalElement(kernel, spec)];
     const terms = polynomial.map(({ powers: [a, b, e], coefficient: { re, im } }) => ({ a, b, e, re, im }));
-    if (terms.some(t => !Number.isFinite(t.re) || !Number.isFinite(t.im))) throw new KernelError('value', 'A coefficient of this kernel is not a finite number.');
+    if (terms.some(t => !Number.isFinite(t.re) || !Number.isFinite(t.im)))
+      throw new KernelError('value', 'A coefficient of this kernel is not a finite number.');
     return [contactElement(terms, spec.wave)];
   }
   return localElements(kernel, interaction.arguments, spec);

@@ -1,15 +1,17 @@
 import { legendreQAbove } from '../special/legendre-q';
 import { scaledModifiedSphericalBessel } from '../special/modified-spherical-bessel';
 import type { LocalPiece, PoleTerm } from './transform';
+import { positionProjection } from './projection-position';
 import { wellProjection } from './projection-well';
 
 /** Adds the projection of v on a wave, at points p, k >= 0, to `out`. */
 export type Projection = (p: Float64Array, k: Float64Array, out: Float64Array) => void;
 
-/** ½∫P_l(x) v dx in closed form (dimension 2: the mean of cos(mφ) v), without cancellation at p ≈ k or small p, k; null where there is none. */
-export function closedProjection(piece: LocalPiece, dimension: 2 | 3, l: number): Projection | null {
+/** ½∫P_l(x) v dx (dimension 2: the mean of cos(mφ) v) by other means than a rule over angles, without cancellation at p ≈ k; null where there are none. */
+export function specialProjection(piece: LocalPiece, dimension: 2 | 3, l: number): Projection | null {
   const { family } = piece;
   if (family.kind === 'well') return wellProjection(dimension, l, family.radius);
+  if (family.kind === 'edged') return positionProjection(family.panels, dimension, l);
   if (dimension === 2) return null;
   if (family.kind === 'gaussian' && family.coefficients.length === 1) return gaussian(family.coefficients[0], family.alpha, l);
   if (family.kind !== 'poles') return null;

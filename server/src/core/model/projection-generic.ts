@@ -10,7 +10,11 @@ interface Resolution {
 }
 
 const RESOLUTIONS: readonly Resolution[] = [
-  { points: 16, width: 1.5 }, { points: 24, width: 1.5 }, { points: 32, width: 1.2 }, { points: 48, width: 1 }, { points: 64, width: 0.6 },
+  { points: 16, width: 1.5 },
+  { points: 24, width: 1.5 },
+  { points: 32, width: 1.2 },
+  { points: 48, width: 1 },
+  { points: 64, width: 0.6 },
 ];
 const WANTED = 1e-13;
 const MOST_PANELS = 4000;
@@ -30,11 +34,10 @@ export function genericProjection(piece: LocalPiece, dimension: 2 | 3, l: number
     angleRule(piece, dimension, l, extent, resolution)(p, k, out);
     return out;
   };
+  const size = sizes(piece, dimension, p, k);
   let values = evaluate(RESOLUTIONS[0]);
   for (let n = 1; ; n++) {
     const finer = evaluate(RESOLUTIONS[n]);
-    // Each point is compared with the size of v where it is peaked, not with what cancellation between angles leaves.
-    const size = evaluateSize(piece, dimension, p, k);
     let error = 0;
     for (let j = 0; j < p.length; j++) if (size[j] > 0) error = Math.max(error, Math.abs(finer[j] - values[j]) / size[j]);
     if (error < WANTED || n === RESOLUTIONS.length - 1) {
@@ -45,9 +48,8 @@ export function genericProjection(piece: LocalPiece, dimension: 2 | 3, l: number
   }
 }
 
-/** Mean of |v| over angles, roughly: the scale on which errors count. */
-function evaluateSize(piece: LocalPiece, dimension: 2 | 3, p: Float64Array, k: Float64Array): Float64Array {
-  const out = new Float64Array(p.length);
+/** What errors count against: the geometric mean of the mean |v| over angles at (p, p) and at (k, k). */
+function sizes(piece: LocalPiece, dimension: 2 | 3, p: Float64Array, k: Float64Array): Float64Array {
   const positive: LocalPiece = {
     ...piece,
     value(q, v) {
@@ -55,8 +57,12 @@ function evaluateSize(piece: LocalPiece, dimension: 2 | 3, p: Float64Array, k: F
       for (let j = 0; j < v.length; j++) v[j] = Math.abs(v[j]);
     },
   };
-  angleRule(positive, dimension, 0, 0, RESOLUTIONS[0])(p, k, out);
-  return out;
+  const [left, right] = [p, k].map(x => {
+    const out = new Float64Array(x.length);
+    angleRule(positive, dimension, 0, 0, RESOLUTIONS[0])(x, x, out);
+    return out;
+  });
+  return left.map((x, j) => Math.sqrt(x * right[j]));
 }
 
 function angleRule(piece: LocalPiece, dimension: 2 | 3, l: number, extent: number, { points, width }: Resolution): Projection {

@@ -6,7 +6,13 @@ import type { Wave } from './spec';
 
 /** coefficient · q^power projected on the wave, exactly; null where it is no polynomial in p and k (odd powers of |p - k|). */
 export function projectedPower(coefficient: Complex, power: number, dimension: 1 | 2 | 3, wave: Wave): readonly MomentumTerm[] | null {
-  const term = (a: number, b: number, factor: number): MomentumTerm => ({ a, b, e: 0, re: coefficient.re * factor + 0, im: coefficient.im * factor + 0 });
+  const term = (a: number, b: number, factor: number): MomentumTerm => ({
+    a,
+    b,
+    e: 0,
+    re: coefficient.re * factor + 0,
+    im: coefficient.im * factor + 0,
+  });
   const terms: MomentumTerm[] = [];
   if (dimension === 1) {
     for (let b = 0; b <= power; b++) terms.push(term(power - b, b, (b % 2 === 0 ? 1 : -1) * choose(power, b)));

@@ -13,7 +13,8 @@ export function wellProjection(dimension: 2 | 3, l: number, radius: number): Pro
   const front = dimension === 3 ? 4 * Math.PI : 2 * Math.PI;
   const weight = dimension - 1;
   // A(x) = x f_(l-1)(xR) and B(x) = f_l(xR); in dimension 3, j_(-1)(y) = cos(y)/y.
-  const a = (x: number) => (l > 0 ? x * f(l - 1, x * radius) : dimension === 3 ? Math.cos(x * radius) / radius : -x * besselJ(1, x * radius));
+  const a = (x: number) =>
+    l > 0 ? x * f(l - 1, x * radius) : dimension === 3 ? Math.cos(x * radius) / radius : -x * besselJ(1, x * radius);
   const b = (x: number) => f(l, x * radius);
   // A' = l A/x - xR B and B' = R A/x - (l + D - 2) B/x.
   const slopeA = (x: number) => (l * a(x)) / x - x * radius * b(x);

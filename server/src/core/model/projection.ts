@@ -1,5 +1,5 @@
 import type { ModelSpec } from './spec';
-import { closedParity, closedProjection } from './projection-closed';
+import { closedParity, specialProjection } from './projection-closed';
 import type { Projection } from './projection-closed';
 import { genericProjection } from './projection-generic';
 import { angular } from './projection-polynomial';
@@ -16,8 +16,10 @@ export interface Projected {
 export function project(piece: LocalPiece, { dimension, wave }: Pick<ModelSpec, 'dimension' | 'wave'>): Projected {
   if (dimension === 1) return wave.kind === 'full' ? full(piece) : parity(piece, wave.kind === 'odd' ? -1 : 1);
   const l = angular(wave);
-  const closed = closedProjection(piece, dimension, l);
-  const { projection, relativeError } = closed ? { projection: closed, relativeError: piece.relativeError } : genericProjection(piece, dimension, l);
+  const special = specialProjection(piece, dimension, l);
+  const { projection, relativeError } = special
+    ? { projection: special, relativeError: piece.relativeError }
+    : genericProjection(piece, dimension, l);
   return scaled(piece, projection, relativeError);
 }
 
@@ -37,7 +39,16 @@ function scaled({ coefficient }: LocalPiece, projection: Projection, relativeErr
 /** Signed momenta: coefficient · exp(-i(p-k)·centre) · v(p-k). */
 function full(piece: LocalPiece): Projected {
   const { coefficient: c, centre } = piece;
-  if (centre === 0) return scaled(piece, (p, k, out) => piece.value(p.map((x, j) => x - k[j]), out), piece.relativeError);
+  if (centre === 0)
+    return scaled(
+      piece,
+      (p, k, out) =>
+        piece.value(
+          p.map((x, j) => x - k[j]),
+          out,
+        ),
+      piece.relativeError,
+    );
   return {
     add(p, k, re, im) {
       const q = p.map((x, j) => x - k[j]);

@@ -60,7 +60,10 @@ function raise(base: readonly PolynomialTerm[], exponent: number, variables: num
 function multiply(left: readonly PolynomialTerm[], right: readonly PolynomialTerm[]): readonly PolynomialTerm[] | null {
   if (left.length * right.length > MOST_TERMS) return null;
   const products = left.flatMap(x =>
-    right.map(y => ({ powers: x.powers.map((n, j) => n + y.powers[j]), coefficient: complexArithmetic('multiply', x.coefficient, y.coefficient) })),
+    right.map(y => ({
+      powers: x.powers.map((n, j) => n + y.powers[j]),
+      coefficient: complexArithmetic('multiply', x.coefficient, y.coefficient),
+    })),
   );
   return collect(products);
 }

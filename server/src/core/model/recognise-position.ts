@@ -37,7 +37,9 @@ export function positionTerms(kernel: Expr, variable: string, radial: boolean): 
   return expandTerms(kernel, positive).flatMap(term => {
     const centre = radial ? 0 : centreOf(term, variable);
     if (centre === 0) return [new Reader(variable, radial, 0, termExpr(term)).read(term)];
-    return expandTerms(shifted(termExpr(term), variable, centre), positive).map(t => new Reader(variable, radial, centre, termExpr(t)).read(t));
+    return expandTerms(shifted(termExpr(term), variable, centre), positive).map(t =>
+      new Reader(variable, radial, centre, termExpr(t)).read(t),
+    );
   });
 }
 
@@ -116,8 +118,15 @@ class Reader {
   read(term: Term): PositionTerm {
     for (const factor of term) if (!this.take(factor)) this.rest.push(factor);
     return {
-      coefficient: this.coefficient, centre: this.centre, power: this.power, odd: this.odd, linear: this.linear,
-      quadratic: this.quadratic, from: this.from, to: this.to, delta: this.delta,
+      coefficient: this.coefficient,
+      centre: this.centre,
+      power: this.power,
+      odd: this.odd,
+      linear: this.linear,
+      quadratic: this.quadratic,
+      from: this.from,
+      to: this.to,
+      delta: this.delta,
       rest: this.rest.length > 0 ? termExpr(this.rest) : null,
       expr: this.expr,
     };
@@ -155,7 +164,10 @@ class Reader {
     const terms = polynomialIn(this.withSize(expr), [this.variable, SIZE]);
     if (!terms) return null;
     const result = { constant: 0, y: 0, size: 0, square: 0 };
-    for (const { powers: [y, size], coefficient } of terms) {
+    for (const {
+      powers: [y, size],
+      coefficient,
+    } of terms) {
       if (coefficient.im !== 0 || y + size > 2 || (y === 1 && size === 1)) return null;
       const key = y + size === 0 ? 'constant' : y + size === 2 ? 'square' : y === 1 && !this.radial ? 'y' : 'size';
       result[key] += coefficient.re;
@@ -175,7 +187,12 @@ class Reader {
 
   private takeModulus(argument: { constant: number; y: number; size: number; square: number }, exponent: number): boolean {
     const slope = argument.y || argument.size;
-    if (argument.square !== 0 || (argument.y !== 0 && argument.size !== 0) || Math.abs(argument.constant) > 1e-12 * Math.abs(slope * this.centre)) return false;
+    if (
+      argument.square !== 0 ||
+      (argument.y !== 0 && argument.size !== 0) ||
+      Math.abs(argument.constant) > 1e-12 * Math.abs(slope * this.centre)
+    )
+      return false;
     return this.multiply({ re: Math.abs(slope) ** exponent, im: 0 }) && this.takePower(exponent, false);
   }
 
@@ -204,10 +221,13 @@ class Reader {
   }
 
   private takeDelta(argument: Expr, primes: number, exponent: number): boolean {
-    if (exponent !== 1 || this.delta !== null) throw new KernelError('value', 'A product or a power of deltas has no meaning; add them instead.');
+    if (exponent !== 1 || this.delta !== null)
+      throw new KernelError('value', 'A product or a power of deltas has no meaning; add them instead.');
     const line = lineIn(argument, this.variable);
-    if (!line) throw new KernelError('value', `The argument of delta must be ${this.variable} itself or ${this.variable} shifted by a constant.`);
-    if (this.radial && (line.constant !== 0 || primes > 0)) throw new KernelError('value', 'A central potential may hold delta(r) at the origin only, without primes.');
+    if (!line)
+      throw new KernelError('value', `The argument of delta must be ${this.variable} itself or ${this.variable} shifted by a constant.`);
+    if (this.radial && (line.constant !== 0 || primes > 0))
+      throw new KernelError('value', 'A central potential may hold delta(r) at the origin only, without primes.');
     this.delta = primes;
     return this.multiply({ re: 1 / (Math.abs(line.slope) * line.slope ** primes), im: 0 });
   }

@@ -51,7 +51,8 @@ function closedPiece(term: PositionTerm, dimension: 1 | 2 | 3): LocalPiece | nul
   if (everywhere && quadratic === 0 && linear === 0 && !odd) return powerPiece(dimension, power);
   if (everywhere && linear === 0 && quadratic < 0) return gaussianPiece(dimension, power, odd, -quadratic);
   if (power !== 0 || linear !== 0 || quadratic !== 0) return null;
-  if (dimension === 1 && Number.isFinite(from) && Number.isFinite(to) && to > from) return { ...wellPiece(1, (to - from) / 2), centre: (to + from) / 2 };
+  if (dimension === 1 && Number.isFinite(from) && Number.isFinite(to) && to > from)
+    return { ...wellPiece(1, (to - from) / 2), centre: (to + from) / 2 };
   return dimension > 1 && from <= 0 && to > 0 && Number.isFinite(to) ? wellPiece(dimension, to) : null;
 }
 
@@ -68,10 +69,15 @@ function deltaTerm(term: PositionTerm, primes: number, variable: string): readon
   if (power < 0 || (odd && power % 2 === 0)) throw new KernelError('value', 'The factor of a delta must be finite where the delta sits.');
   if (rest) {
     const value = primes === 0 ? factorAt(rest, variable) : null;
-    if (!value) throw new KernelError('not-evaluated', "A derivative of delta is taken only with powers as factors; write f(x)*delta'(x) as f(0)*delta'(x) - f'(0)*delta(x).");
+    if (!value)
+      throw new KernelError(
+        'not-evaluated',
+        "A derivative of delta is taken only with powers as factors; write f(x)*delta'(x) as f(0)*delta'(x) - f'(0)*delta(x).",
+      );
     coefficient = { re: coefficient.re * value.re - coefficient.im * value.im, im: coefficient.re * value.im + coefficient.im * value.re };
   }
-  if (linear !== 0 && primes > 0) throw new KernelError('value', 'The factor of a derivative of delta must be smooth where the delta sits.');
+  if (linear !== 0 && primes > 0)
+    throw new KernelError('value', 'The factor of a derivative of delta must be smooth where the delta sits.');
   // y^power exp(quadratic y²) has the Taylor coefficients below; only those up to the derivatives of delta count.
   const taylor = [0, 0, 0];
   if (power < 3) taylor[power] = 1;
@@ -80,7 +86,12 @@ function deltaTerm(term: PositionTerm, primes: number, variable: string): readon
   for (let j = 0, factor = 1; j <= primes; j++) {
     const remaining = primes - j;
     const size = factor * taylor[j];
-    if (size !== 0) contacts.push({ coefficient: timesPowerOfI({ re: coefficient.re * size, im: coefficient.im * size }, remaining), power: remaining, centre });
+    if (size !== 0)
+      contacts.push({
+        coefficient: timesPowerOfI({ re: coefficient.re * size, im: coefficient.im * size }, remaining),
+        power: remaining,
+        centre,
+      });
     factor *= -(primes - j);
   }
   return contacts;
@@ -88,11 +99,11 @@ function deltaTerm(term: PositionTerm, primes: number, variable: string): readon
 
 function factorAt(rest: Expr, variable: string) {
   const value = constantValue(substitute(rest, new Map([[variable, number(0)]])));
-  if (value && !(Number.isFinite(value.re) && Number.isFinite(value.im))) throw new KernelError('value', 'The factor of a delta must be finite where the delta sits.');
+  if (value && !(Number.isFinite(value.re) && Number.isFinite(value.im)))
+    throw new KernelError('value', 'The factor of a delta must be finite where the delta sits.');
   return value;
 }
 
 function timesPowerOfI({ re, im }: { re: number; im: number }, n: number): { re: number; im: number } {
   return n === 0 ? { re, im } : timesPowerOfI({ re: -im + 0, im: re + 0 }, n - 1);
 }
-

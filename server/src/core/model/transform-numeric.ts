@@ -10,7 +10,10 @@ import { tabulatedPiece } from './transform-tabulated';
 export function numericPieces(terms: readonly PositionTerm[], variable: string, dimension: 1 | 2 | 3): readonly LocalPiece[] {
   const centres = [...new Set(terms.map(t => t.centre))];
   return centres.flatMap(centre => {
-    const sum = terms.filter(t => t.centre === centre).map(t => t.expr).reduce((left, right) => binary('add', left, right));
+    const sum = terms
+      .filter(t => t.centre === centre)
+      .map(t => t.expr)
+      .reduce((left, right) => binary('add', left, right));
     if (dimension > 1) return parts(sum, variable, dimension, false);
     const mirrored = substitute(sum, new Map([[variable, negate(symbol(variable))]]));
     // ∫V exp(-iqx) dx = ∫_0^∞ [V(x) + V(-x)] cos(qx) dx - i ∫_0^∞ [V(x) - V(-x)] sin(qx) dx.

@@ -6,7 +6,9 @@ import { sphericalBessels } from '../special/spherical-bessel';
 const POINTS = 20;
 const RULE = gaussLegendre(POINTS);
 /** Legendre coefficients from values at the nodes: [degree][node]. */
-const ANALYSIS = Array.from({ length: POINTS }, (_, n) => Float64Array.from(RULE.nodes, (x, j) => (n + 0.5) * RULE.weights[j] * legendreP(n, x)));
+const ANALYSIS = Array.from({ length: POINTS }, (_, n) =>
+  Float64Array.from(RULE.nodes, (x, j) => (n + 0.5) * RULE.weights[j] * legendreP(n, x)),
+);
 
 interface Panel {
   readonly middle: number;
@@ -22,7 +24,10 @@ export class Panels {
   private readonly bessels = new Float64Array(POINTS);
 
   /** `breaks`: rising; bisected between them until the series converges, or the panel no longer counts. */
-  constructor(private readonly f: (r: Float64Array, out: Float64Array) => void, breaks: readonly number[]) {
+  constructor(
+    private readonly f: (r: Float64Array, out: Float64Array) => void,
+    breaks: readonly number[],
+  ) {
     const total = breaks.slice(1).reduce((sum, to, j) => sum + area(this.expand(breaks[j], to)), 0);
     for (let j = 1; j < breaks.length; j++) this.refine(breaks[j - 1], breaks[j], 1e-18 * total, 0);
     this.size = this.panels.reduce((sum, panel) => sum + area(panel), 0);
@@ -49,19 +54,27 @@ export class Panels {
     return { cosine, sine };
   }
 
-  /** ∫f(r) J_0(qr) dr: panels split until the Bessel function turns less than three times on each. */
+  /** ∫f(r) J_0(qr) dr. */
   hankel(q: number): number {
-    let sum = 0;
+    const { r, w } = this.rule(q);
+    return r.reduce((sum, x, j) => sum + w[j] * besselJ(0, q * x), 0);
+  }
+
+  /** Points r and weights times f(r) that integrate f against anything that oscillates no faster than exp(iqr). */
+  rule(q: number): { readonly r: Float64Array; readonly w: Float64Array } {
+    const r: number[] = [];
+    const w: number[] = [];
     for (const { middle, half, coefficients } of this.panels) {
       const parts = Math.max(1, Math.ceil((q * half) / 10));
       for (let part = 0; part < parts; part++) {
         for (let j = 0; j < POINTS; j++) {
           const t = -1 + (2 * part + 1 + RULE.nodes[j]) / parts;
-          sum += (RULE.weights[j] * half * clenshaw(coefficients, t) * besselJ(0, q * (middle + half * t))) / parts;
+          r.push(middle + half * t);
+          w.push((RULE.weights[j] * half * legendreSum(coefficients, t)) / parts);
         }
       }
     }
-    return sum;
+    return { r: Float64Array.from(r), w: Float64Array.from(w) };
   }
 
   private refine(from: number, to: number, negligible: number, depth: number): void {
@@ -82,7 +95,10 @@ export class Panels {
     const middle = (from + to) / 2;
     const half = (to - from) / 2;
     const values = new Float64Array(POINTS);
-    this.f(RULE.nodes.map(x => middle + half * x), values);
+    this.f(
+      RULE.nodes.map(x => middle + half * x),
+      values,
+    );
     const coefficients = Float64Array.from(ANALYSIS, row => row.reduce((sum, w, j) => sum + w * values[j], 0));
     return { middle, half, coefficients };
   }
@@ -93,9 +109,10 @@ function area({ half, coefficients }: Panel): number {
 }
 
 /** Σ c_n P_n(t). */
-function clenshaw(c: Float64Array, t: number): number {
+function legendreSum(c: Float64Array, t: number): number {
   let above = 0;
   let value = 0;
-  for (let n = c.length - 1; n >= 0; n--) [above, value] = [value, c[n] + ((2 * n + 1) / (n + 1)) * t * value - ((n + 1) / (n + 2)) * above];
+  for (let n = c.length - 1; n >= 0; n--)
+    [above, value] = [value, c[n] + ((2 * n + 1) / (n + 1)) * t * value - ((n + 1) / (n + 2)) * above];
   return value;
 }

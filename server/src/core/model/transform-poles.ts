@@ -14,7 +14,12 @@ export function exponentialPiece(dimension: 1 | 2 | 3, n: number, m: number, odd
   const first = dimension === 1 ? 0 : -1;
   if (!Number.isInteger(n) || n < first || n > HIGHEST_POWER || !(m > 0)) return null;
   // Terms c · m^a · (q² + m²)^(-nu).
-  const base = dimension === 3 ? { c: 4 * Math.PI, a: 0, nu: 1 } : dimension === 2 ? { c: 2 * Math.PI, a: 0, nu: 0.5 } : { c: 2, a: odd ? 0 : 1, nu: 1 };
+  const base =
+    dimension === 3
+      ? { c: 4 * Math.PI, a: 0, nu: 1 }
+      : dimension === 2
+        ? { c: 2 * Math.PI, a: 0, nu: 0.5 }
+        : { c: 2, a: odd ? 0 : 1, nu: 1 };
   let terms = [base];
   for (let step = first; step < n; step++) {
     terms = combine(
@@ -39,7 +44,10 @@ export function powerPiece(dimension: 1 | 2 | 3, power: number): LocalPiece | nu
 
 /** Σ coefficient · q^odd · (q² + mass²)^(-nu). */
 export function polesPiece(
-  terms: readonly PoleTerm[], mass: number, odd: boolean, position: { smooth: boolean; origin: Complex | null },
+  terms: readonly PoleTerm[],
+  mass: number,
+  odd: boolean,
+  position: { smooth: boolean; origin: Complex | null },
 ): LocalPiece {
   const square = mass * mass;
   return {

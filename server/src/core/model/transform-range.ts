@@ -28,8 +28,13 @@ export function findRange(f: (r: Float64Array, out: Float64Array) => void, dimen
   }
   const largest = Math.max(...shares);
   if (largest === 0) return { from: 0, to: 0, typical: 1 };
-  if (shares[0] > 1e-10 * largest) throw new KernelError('not-evaluated', 'The potential is too singular at the origin to have a Fourier transform; regulate it there, or use its matrix element (p, k).');
-  if (shares[shares.length - 1] > 1e-10 * largest) throw new KernelError('not-evaluated', 'The potential does not fall off fast enough at large distances to have a Fourier transform.');
+  if (shares[0] > 1e-10 * largest)
+    throw new KernelError(
+      'not-evaluated',
+      'The potential is too singular at the origin to have a Fourier transform; regulate it there, or use its matrix element (p, k).',
+    );
+  if (shares[shares.length - 1] > 1e-10 * largest)
+    throw new KernelError('not-evaluated', 'The potential does not fall off fast enough at large distances to have a Fourier transform.');
   const negligible = 1e-18 * largest;
   const first = shares.findIndex(s => s > negligible);
   let last = shares.length - 1;

@@ -1,6 +1,7 @@
 import { NoExpansion } from '../algebra/at-infinity';
 import { binary, number, symbol } from '../algebra/expression';
 import type { Expr } from '../algebra/expression';
+import { expandAt } from './expand-at';
 import { KernelError } from './kernel-error';
 import type { TailTerm } from './kernel-shape';
 import type { LocalPiece } from './transform';
@@ -9,7 +10,7 @@ import { Panels } from './transform-panels';
 import { findRange } from './transform-range';
 import type { Range } from './transform-range';
 import { tabulate } from './transform-table';
-import { edgeSeries, expandAt, FRONTS, mergeTail, originTail, realPart, tailValue, timesPowerOfI } from './transform-tail';
+import { edgeSeries, FRONTS, mergeTail, originTail, realPart, tailValue, timesPowerOfI } from './transform-tail';
 
 export interface HalfLineFunction {
   /** Real values at r > 0. */
@@ -32,10 +33,13 @@ export function tabulatedPiece(half: HalfLineFunction): LocalPiece {
   const range = findRange(f, dimension);
   if (range.to === 0) return { ...EMPTY, odd };
   const edges = findEdges(half.expr, half.variable, range);
-  const weighted = dimension === 1 ? f : (r: Float64Array, out: Float64Array) => {
-    f(r, out);
-    for (let j = 0; j < r.length; j++) out[j] *= r[j];
-  };
+  const weighted =
+    dimension === 1
+      ? f
+      : (r: Float64Array, out: Float64Array) => {
+          f(r, out);
+          for (let j = 0; j < r.length; j++) out[j] *= r[j];
+        };
   const panels = new Panels(weighted, breaksOf(range, edges, weighted));
   const direct = (q: number) => {
     if (dimension === 2) return 2 * Math.PI * panels.hankel(q);
@@ -46,7 +50,8 @@ export function tabulatedPiece(half: HalfLineFunction): LocalPiece {
   const algebraic = range.to / range.typical > 1e5;
   const unit = 1 / range.typical;
   const largest = Math.abs(direct(1e-3 * unit)) + Math.abs(direct(unit));
-  const noise = (q: number) => (dimension === 3 ? (2e-16 * 4 * Math.PI * panels.size) / Math.max(q, unit) : 4e-16 * panels.size * (dimension === 2 ? 2 * Math.PI : 1));
+  const noise = (q: number) =>
+    dimension === 3 ? (2e-16 * 4 * Math.PI * panels.size) / Math.max(q, unit) : 4e-16 * panels.size * (dimension === 2 ? 2 * Math.PI : 1);
   const end = takeover(direct, tail, noise, unit, largest);
   const first = unit * (algebraic ? 1e-7 : 0.1);
   const breaks = [0, ...octaves(first, end)];
@@ -63,7 +68,7 @@ export function tabulatedPiece(half: HalfLineFunction): LocalPiece {
         out[j] = odd && q[j] < 0 ? -v : v;
       }
     },
-    family: { kind: 'other' },
+    family: dimension > 1 && edges.length > 0 ? { kind: 'edged', panels } : { kind: 'other' },
     scale: algebraic ? 0 : unit,
     tail,
     smooth,
@@ -74,15 +79,26 @@ export function tabulatedPiece(half: HalfLineFunction): LocalPiece {
 }
 
 const EMPTY: LocalPiece = {
-  coefficient: { re: 1, im: 0 }, centre: 0, odd: false, value: (_, out) => void out.fill(0), family: { kind: 'other' }, scale: 1, tail: [],
-  smooth: true, origin: { re: 0, im: 0 }, transfer: null, relativeError: 0,
+  coefficient: { re: 1, im: 0 },
+  centre: 0,
+  odd: false,
+  value: (_, out) => void out.fill(0),
+  family: { kind: 'other' },
+  scale: 1,
+  tail: [],
+  smooth: true,
+  origin: { re: 0, im: 0 },
+  transfer: null,
+  relativeError: 0,
 };
 
 function breaksOf({ from, to, typical }: Range, edges: readonly number[], f: (r: Float64Array, out: Float64Array) => void): number[] {
   const start = new Float64Array(2);
   f(Float64Array.of(from * 1e-6, typical), start);
   const bounded = Math.abs(start[0]) <= 10 * Math.abs(start[1]);
-  return [bounded ? 0 : from, ...edges, ...octaves(bounded ? typical / 4 : from * 2, to)].sort((x, y) => x - y).filter((x, j, all) => j === 0 || x > all[j - 1]);
+  return [bounded ? 0 : from, ...edges, ...octaves(bounded ? typical / 4 : from * 2, to)]
+    .sort((x, y) => x - y)
+    .filter((x, j, all) => j === 0 || x > all[j - 1]);
 }
 
 function octaves(from: number, to: number): number[] {
@@ -92,7 +108,13 @@ function octaves(from: number, to: number): number[] {
 }
 
 /** The smallest momentum from which the asymptotic series is as good as the quadrature. */
-function takeover(direct: (q: number) => number, tail: readonly TailTerm[], noise: (q: number) => number, unit: number, largest: number): number {
+function takeover(
+  direct: (q: number) => number,
+  tail: readonly TailTerm[],
+  noise: (q: number) => number,
+  unit: number,
+  largest: number,
+): number {
   for (let q = 8 * unit; q < 1e5 * unit; q *= 1.5) {
     const agrees = [1, 1.07, 1.19, 1.33].every(x => {
       const value = direct(q * x);
@@ -100,7 +122,10 @@ function takeover(direct: (q: number) => number, tail: readonly TailTerm[], nois
     });
     if (agrees) return q;
   }
-  throw new KernelError('not-evaluated', `The transform of this potential does not settle into its asymptotic form (of size ${largest.toPrecision(3)}); give its matrix element (p, k) instead.`);
+  throw new KernelError(
+    'not-evaluated',
+    `The transform of this potential does not settle into its asymptotic form (of size ${largest.toPrecision(3)}); give its matrix element (p, k) instead.`,
+  );
 }
 
 function asymptotics({ expr, variable, part, dimension, odd }: HalfLineFunction, edges: readonly number[]) {
@@ -114,7 +139,12 @@ function asymptotics({ expr, variable, part, dimension, odd }: HalfLineFunction,
       dimension === 2
         ? originTail(local, FRONTS.plane, 2, part)
         : dimension === 3
-          ? originTail(local.map(t => ({ ...t, power: t.power + 1 })), FRONTS.sine, 2, part).map(t => ({ ...t, coefficient: { re: 4 * Math.PI * t.coefficient.re, im: 0 } }))
+          ? originTail(
+              local.map(t => ({ ...t, power: t.power + 1 })),
+              FRONTS.sine,
+              2,
+              part,
+            ).map(t => ({ ...t, coefficient: { re: 4 * Math.PI * t.coefficient.re, im: 0 } }))
           : originTail(local, odd ? FRONTS.sine : FRONTS.cosine, 1, part);
     const fromEdges = edges.flatMap(edge => {
       const series = (e: Expr) => edgeSeries(expandAt(e, variable, edge, 1), expandAt(e, variable, edge, -1), part);
@@ -144,7 +174,9 @@ function planeEdge(series: (n: number) => ReturnType<typeof edgeSeries>, edge: n
     const turn = timesPowerOfI(2 * Math.PI * Math.sqrt(2 / Math.PI) * a, n);
     const front = { re: (turn.re + turn.im) * Math.SQRT1_2, im: (turn.im - turn.re) * Math.SQRT1_2 };
     for (const { z, power } of series(n)) {
-      terms.push(...realPart({ z: { re: z.re * front.re - z.im * front.im, im: z.re * front.im + z.im * front.re }, power: power - n - 0.5 }, edge));
+      terms.push(
+        ...realPart({ z: { re: z.re * front.re - z.im * front.im, im: z.re * front.im + z.im * front.re }, power: power - n - 0.5 }, edge),
+      );
     }
   }
   return terms;

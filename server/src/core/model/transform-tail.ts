@@ -1,73 +1,18 @@
-import { atInfinity } from '../algebra/at-infinity';
-import type { AsymptoticTerm, Asymptotics } from '../algebra/at-infinity';
-import { binary, call, number } from '../algebra/expression';
-import type { Complex, Expr } from '../algebra/expression';
+import type { Complex } from '../algebra/expression';
 import { gamma } from '../special/gamma';
+import type { LocalTerm } from './expand-at';
 import type { TailTerm } from './kernel-shape';
-
-/** Orders kept of a potential's expansion about a point. */
-const DEPTH = 14;
-
-/** coefficient · t^power · ln^log t, t the distance from the point. */
-export interface LocalTerm {
-  readonly power: number;
-  readonly log: number;
-  readonly c: Complex;
-}
-
-/** A function on one side (direction ±1) of a point, by rising power of the distance. Throws NoExpansion. */
-export function expandAt(expr: Expr, variable: string, at: number, direction: 1 | -1): readonly LocalTerm[] {
-  const terms: AsymptoticTerm[] = [{ power: -1, log: 0, c: { re: direction, im: 0 } }];
-  if (at !== 0) terms.unshift({ power: 0, log: 0, c: { re: at, im: 0 } });
-  const position: Asymptotics = { terms, truncated: -Infinity };
-  return atInfinity(byExponentials(expr), new Map([[variable, position]]), DEPTH)
-    .terms.filter(t => t.power >= -DEPTH)
-    .map(t => ({ power: -t.power + 0, log: t.log, c: t.log % 2 === 0 ? t.c : { re: -t.c.re, im: -t.c.im } }));
-}
-
-/** V(q) for q → ∞, by falling power. Throws NoExpansion where it oscillates or grows like an exponential. */
-export function expandTransfer(expr: Expr): Asymptotics['terms'] {
-  return atInfinity(expr, new Map([['q', { terms: [{ power: 1, log: 0, c: { re: 1, im: 0 } }], truncated: -Infinity }]]), DEPTH).terms;
-}
-
-/** Circular and hyperbolic functions through the exponential, whose expansion is known to every order. */
-function byExponentials(expr: Expr): Expr {
-  if (expr.kind === 'number' || expr.kind === 'symbol') return expr;
-  if (expr.kind === 'negate') return { ...expr, argument: byExponentials(expr.argument) };
-  if (expr.kind !== 'call') return binary(expr.kind, byExponentials(expr.left), byExponentials(expr.right));
-  const args = expr.arguments.map(byExponentials);
-  const exponential = (factor: Complex) => call('exp', [binary('multiply', number(factor.re, factor.im), args[0])]);
-  const half = (unit: Complex, kind: 'add' | 'subtract', front: Complex) =>
-    binary('multiply', number(front.re, front.im), binary(kind, exponential(unit), exponential({ re: -unit.re, im: -unit.im })));
-  const i = { re: 0, im: 1 };
-  const one = { re: 1, im: 0 };
-  const cos = () => half(i, 'add', { re: 0.5, im: 0 });
-  const sin = () => half(i, 'subtract', { re: 0, im: -0.5 });
-  const cosh = () => half(one, 'add', { re: 0.5, im: 0 });
-  const sinh = () => half(one, 'subtract', { re: 0.5, im: 0 });
-  switch (expr.name) {
-    case 'cos':
-      return cos();
-    case 'sin':
-      return sin();
-    case 'tan':
-      return binary('divide', sin(), cos());
-    case 'cosh':
-      return cosh();
-    case 'sinh':
-      return sinh();
-    case 'tanh':
-      return binary('divide', sinh(), cosh());
-    default:
-      return { ...expr, arguments: args };
-  }
-}
 
 /**
  * Terms of an integral transform for q → ∞ from f ~ Σ c r^s ln^β r at the origin (β ≤ 1), where r^s becomes front(s) q^(-s-shift); a
  * logarithm is the derivative by s.
  */
-export function originTail(terms: readonly LocalTerm[], front: (s: number) => number, shift: number, part: 're' | 'im'): readonly TailTerm[] {
+export function originTail(
+  terms: readonly LocalTerm[],
+  front: (s: number) => number,
+  shift: number,
+  part: 're' | 'im',
+): readonly TailTerm[] {
   const tail: TailTerm[] = [];
   const push = (coefficient: number, power: number, log: number) => {
     if (coefficient !== 0) tail.push({ coefficient: { re: coefficient, im: 0 }, power, log, phase: 0 });
@@ -114,7 +59,8 @@ export function edgeSeries(above: readonly LocalTerm[], below: readonly LocalTer
     const up = taylor(above);
     const down = taylor(below) * (n % 2 === 0 ? 1 : -1);
     const jump = up - down;
-    if (Math.abs(jump) > 1e-12 * (Math.abs(up) + Math.abs(down))) series.push({ z: timesPowerOfI(gamma(n + 1) * jump, n + 1), power: -n - 1 });
+    if (Math.abs(jump) > 1e-12 * (Math.abs(up) + Math.abs(down)))
+      series.push({ z: timesPowerOfI(gamma(n + 1) * jump, n + 1), power: -n - 1 });
   }
   return series;
 }

@@ -3,6 +3,7 @@ import { compile, complexArithmetic, complexPower } from '../algebra/compile';
 import { binary, negate, number, substitute, symbol } from '../algebra/expression';
 import type { Expr } from '../algebra/expression';
 import { specialFunctions } from '../special';
+import { expandTransfer } from './expand-at';
 import { KernelError } from './kernel-error';
 import type { TailTerm } from './kernel-shape';
 import { constantValue } from './recognise-constant';
@@ -13,7 +14,7 @@ import type { LocalPiece } from './transform';
 import type { ContactPower, Transformed } from './transform-local';
 import { gaussianInTransfer } from './transform-gaussian';
 import { polesPiece } from './transform-poles';
-import { expandTransfer, mergeTail } from './transform-tail';
+import { mergeTail } from './transform-tail';
 
 /** A kernel given as V(q): powers of q, poles and Gaussians in closed form, other terms as they stand. */
 export function transferPieces(kernel: Expr, dimension: 1 | 2 | 3): Transformed {

@@ -8,7 +8,8 @@ import type { LocalPiece } from './transform';
 export function wellPiece(dimension: 1 | 2 | 3, radius: number): LocalPiece {
   const volume = dimension === 1 ? 2 * radius : dimension === 2 ? Math.PI * radius ** 2 : (4 / 3) * Math.PI * radius ** 3;
   // Normalised to 1 at q = 0: j_0(x), 2 J_1(x)/x, 3 j_1(x)/x.
-  const shape = (x: number) => (dimension === 1 ? sphericalBessel(0, x) : x < 1e-8 ? 1 : dimension === 2 ? (2 * besselJ(1, x)) / x : (3 * sphericalBessel(1, x)) / x);
+  const shape = (x: number) =>
+    dimension === 1 ? sphericalBessel(0, x) : x < 1e-8 ? 1 : dimension === 2 ? (2 * besselJ(1, x)) / x : (3 * sphericalBessel(1, x)) / x;
   return {
     coefficient: { re: 1, im: 0 },
     centre: 0,
@@ -28,7 +29,8 @@ export function wellPiece(dimension: 1 | 2 | 3, radius: number): LocalPiece {
 
 function tailOf(dimension: 1 | 2 | 3, radius: number): readonly TailTerm[] {
   if (dimension === 1) return waves({ re: 0, im: -1 }, -1, radius);
-  if (dimension === 3) return [...waves({ re: -2 * Math.PI * radius, im: 0 }, -2, radius), ...waves({ re: 0, im: -2 * Math.PI }, -3, radius)];
+  if (dimension === 3)
+    return [...waves({ re: -2 * Math.PI * radius, im: 0 }, -2, radius), ...waves({ re: 0, im: -2 * Math.PI }, -3, radius)];
   // 2πR J_1(x)/q by Hankel's expansion: Re sqrt(2/πx) e^{i(x - 3π/4)} Σ (i/x)^n a_n, a_n = Π (4 - (2j-1)²)/(8j).
   const terms: TailTerm[] = [];
   let a = 1;

@@ -1,5 +1,6 @@
 import type { Complex, Expr } from '../algebra/expression';
 import type { TailTerm } from './kernel-shape';
+import type { Panels } from './transform-panels';
 
 /**
  * One term of a local interaction in momentum space: V(q) = coefficient · exp(-i·q·centre) · v(q) with a real function v, even or
@@ -31,6 +32,8 @@ export type Family =
   | { readonly kind: 'gaussian'; readonly alpha: number; readonly coefficients: readonly number[] }
   /** Transform of step(radius - r). */
   | { readonly kind: 'well'; readonly radius: number }
+  /** A potential with edges, in dimensions 2 and 3; the panels hold r V(r). */
+  | { readonly kind: 'edged'; readonly panels: Panels }
   | { readonly kind: 'other' };
 
 export interface PoleTerm {

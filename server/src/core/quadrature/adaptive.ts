@@ -27,7 +27,13 @@ export function integrate(f: (x: number) => number, from: number, to: number, li
   let evaluations = KRONROD_POINTS;
   const outcome = (status: Outcome['status']): Outcome => {
     const value = total(panels, 'value');
-    return { status, value: status === 'nonFinite' ? NaN : value, errorEstimate: total(panels, 'error'), absIntegral: total(panels, 'abs'), evaluations };
+    return {
+      status,
+      value: status === 'nonFinite' ? NaN : value,
+      errorEstimate: total(panels, 'error'),
+      absIntegral: total(panels, 'abs'),
+      evaluations,
+    };
   };
   for (;;) {
     const value = total(panels, 'value');

@@ -27,7 +27,8 @@ export function doubleExponential(f: (x: number) => number, from: number, limits
   for (;;) {
     const outcome = (status: Outcome['status']): Outcome => ({ status, value, errorEstimate: error, absIntegral: abs * step, evaluations });
     if (!Number.isFinite(value)) return { ...outcome('nonFinite'), value: NaN };
-    if (error <= Math.max(absolute, relative * Math.abs(value), 2e-15 * abs * step)) return outcome(edges > 1e-6 * abs * step ? 'divergent' : 'converged');
+    if (error <= Math.max(absolute, relative * Math.abs(value), 2e-15 * abs * step))
+      return outcome(edges > 1e-6 * abs * step ? 'divergent' : 'converged');
     if (shouldStop()) return outcome('cancelled');
     if (evaluations * 2 > budget) return outcome(edges > 1e-6 * abs * step ? 'divergent' : 'budgetExhausted');
     step /= 2;

@@ -1,6 +1,7 @@
 import type { Complex } from '../algebra/expression';
 import { kernelColumn, kernelRows } from '../model/kernel-on-grid';
-import type { GridKernels, ScaledVertex } from '../series/grid-chain';
+import type { GridKernels } from '../series/dense-words';
+import type { ScaledVertex } from '../series/grid-chain';
 import type { LoopWeights } from '../series/loop-weights';
 
 /** The whole potential between the loop points (nodes, then on-shell momenta) of a problem: [row * size + column]. */

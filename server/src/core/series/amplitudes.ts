@@ -2,7 +2,8 @@ import type { Complex } from '../algebra/expression';
 import type { LaurentTerm } from '../algebra/laurent';
 import { solveSmall } from '../linear/solve';
 import { momentumGrid, type GridWishes, type MomentumGrid } from '../model/momentum-grid';
-import { GridChain, GridKernels, type ScaledVertex } from './grid-chain';
+import { GridKernels } from './dense-words';
+import { contactPowers, GridChain, type ScaledVertex } from './grid-chain';
 import type { StrengthLaw } from './contact-declared';
 import { loopWeights, type LoopWeights } from './loop-weights';
 import { kernelScales, oscillationLength, type Setup } from './setup';
@@ -100,8 +101,8 @@ function weightsAt({ setup, grid }: CutoffGrid, E: number, onShell: boolean, oth
 
 /** K at [monomial][problem]. */
 function runBare(at: CutoffGrid, problems: readonly LoopWeights[]): Block[][] {
-  const { list, vertices, size } = at.setup;
-  const chain = new GridChain(list, vertices, at.kernels, problems, size);
+  const { list, vertices } = at.setup;
+  const chain = new GridChain(list, vertices, at.kernels, problems);
   return list.terms.map((_, n) => {
     chain.step(n);
     return problems.map((p, j) => blockFrom(chain, n, j, p.externals.length));
@@ -115,7 +116,7 @@ function blockFrom(chain: GridChain, n: number, problem: number, count: number):
 
 function runRenormalised(at: CutoffGrid, problems: readonly LoopWeights[], laws: readonly StrengthLaw[]): { standing: Block[][]; strengths: Strength[] } {
   const { setup } = at;
-  const { list, vertices, size, kinematics, counterterms } = setup;
+  const { list, vertices, kinematics, counterterms } = setup;
   const groups = list.terms.map(t => subtractionGroups(counterterms, t.exponents, kinematics));
   const extra: SubtractionPoint[] = [];
   const indexOf = (point: SubtractionPoint): number => {
@@ -124,7 +125,7 @@ function runRenormalised(at: CutoffGrid, problems: readonly LoopWeights[], laws:
   };
   groups.flat().forEach(group => group.points.forEach(indexOf));
   const all = [...problems, ...extra.map(p => weightsAt(at, p.E, p.onShell, p.onShell ? [] : externalsAt(kinematics, p.momentum)))];
-  const chain = new GridChain(list, vertices, at.kernels, all, size);
+  const chain = new GridChain(list, vertices, at.kernels, all, contactPowers(counterterms.map(c => c.vertex)));
   const strengths: Strength[] = [];
   const standing = list.terms.map((_, n) => {
     chain.step(n);

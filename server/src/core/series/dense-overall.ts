@@ -1,10 +1,10 @@
 import type { Complex } from '../algebra/expression';
 import { leastSquares } from '../linear/solve';
 import type { MomentumTerm } from '../model/kernel-shape';
-import { fitGrowth, type Growth } from './growth-fit';
+import { growthFit, type Growth } from './growth-fit';
 import { groupIntoForms, type LocalForm } from './forms';
 import type { Ladder } from './ladder';
-import type { Setup } from './setup';
+import { partialWave, type Setup } from './setup';
 import { vertexValue } from './subtraction';
 
 /** A form fitted to what grows, with its error. */
@@ -70,14 +70,15 @@ function candidates(setup: Setup, degree: number, logs: number, rungs: number): 
 }
 
 function sampleGrowth(ladder: Ladder, n: number, scale: number, growing: readonly Growth[], falling: readonly Growth[]): Samples[] | null {
+  const fit = growthFit(ladder.cutoffs, growing, falling, scale);
+  if (!fit) return null;
   const samples = growing.map(growth => ({ growth, values: ladder.energies.map(() => ladder.externals.map(() => [] as Complex[])), shift: 0 }));
   for (let e = 0; e < ladder.energies.length; e++) {
     for (let row = 0; row < ladder.externals.length; row++) {
       for (let column = 0; column < ladder.externals.length; column++) {
         const y = ladder.values(n, e, row, column);
-        const re = fitGrowth(ladder.cutoffs, y.map(v => v.re), growing, falling, scale);
-        const im = fitGrowth(ladder.cutoffs, y.map(v => v.im), growing, falling, scale);
-        if (!re || !im) return null;
+        const re = fit(y.map(v => v.re));
+        const im = fit(y.map(v => v.im));
         samples.forEach((s, j) => {
           s.values[e][row].push({ re: re.coefficients[j], im: im.coefficients[j] });
           s.shift = Math.max(s.shift, Math.hypot(re.shift[j], im.shift[j]));
@@ -94,7 +95,7 @@ const MISFIT = 2e-4;
 /** Σ c p^a k^b E^e with a + b + (fall)e <= degree - power beyond the partial wave's own p^l k^l. */
 function asPolynomial(setup: Setup, ladder: Ladder, sample: Samples, degree: number): FittedForm[] | null {
   const { kinematics } = setup;
-  const l = setup.spec.wave.kind === 'angular' ? Math.abs(setup.spec.wave.number) : setup.spec.wave.kind === 'odd' ? 1 : 0;
+  const l = partialWave(setup.spec.wave);
   const step = kinematics.signed ? 1 : 2;
   const room = degree - sample.growth.power + 1e-9;
   const unit = Math.max(...ladder.externals.map(Math.abs));

@@ -1,10 +1,10 @@
 import type { Complex } from '../algebra/expression';
-import { kernelColumn, kernelOnGrid, kernelRows, type KernelOnGrid } from '../model/kernel-on-grid';
-import type { MomentumGrid } from '../model/momentum-grid';
+import type { MomentumTerm } from '../model/kernel-shape';
+import type { Monomial } from '../model/spec';
 import type { Vertex } from '../model/vertex';
-import { applyKernel } from '../linear/apply';
-import { isProperPart, difference, type MonomialList } from './monomials';
+import { addMultiple, DenseOperator, type Column, type GridKernels } from './dense-words';
 import type { LoopWeights } from './loop-weights';
+import { difference, type MonomialList } from './monomials';
 
 /** A vertex times a number. */
 export interface ScaledVertex {
@@ -12,273 +12,238 @@ export interface ScaledVertex {
   readonly strength: Complex;
 }
 
-/** Values at [column][point]; points are the nodes, then the external momenta of the problem. */
-interface Columns {
-  readonly re: Float64Array[];
-  readonly im: Float64Array[];
+/** The powers of momentum that occur in contacts. */
+export const contactPowers = (vertices: readonly Vertex[]): number[] => [...new Set(vertices.flatMap(v => v.contact ?? []).flatMap(t => [t.a, t.b]))];
+
+/** A vertex with the part of a monomial that it stands for: one factor for an interaction, all of it for a counterterm. */
+interface Placed<V> {
+  readonly content: Monomial;
+  readonly part: V;
 }
 
-/** R_ν of one problem: R(k) = Σ_a u_a k^a + d(k) for each external momentum on the right (column). */
-interface Amplitude {
-  readonly u: Columns;
-  /** What is no polynomial; null where there is nothing. */
-  readonly d: Columns | null;
-  /** Σ_j g_j k_j^b R(k_j) over the loop. */
-  readonly moments: Columns;
+interface Contact {
+  readonly terms: readonly MomentumTerm[];
+  readonly strength: Complex;
 }
 
-/** The kernels between nodes, shared by every problem (and every run) on one grid. */
-export class GridKernels {
-  private readonly known = new Map<Vertex, Map<number, KernelOnGrid>>();
+/** Complex numbers side by side. */
+interface Numbers {
+  readonly re: Float64Array;
+  readonly im: Float64Array;
+}
 
-  constructor(readonly grid: MomentumGrid) {}
-
-  of(vertex: Vertex, E: number): KernelOnGrid {
-    const at = vertex.dependsOnEnergy ? E : 0;
-    const byEnergy = this.known.get(vertex) ?? new Map<number, KernelOnGrid>();
-    this.known.set(vertex, byEnergy);
-    const kernel = byEnergy.get(at) ?? kernelOnGrid(vertex.element, this.grid, vertex.ridge, E);
-    byEnergy.set(at, kernel);
-    return kernel;
-  }
+/** One problem's share of one monomial. Powers are those of `basis`. */
+interface Share {
+  /** Σ over orderings of kernels that are no contacts, (V G)(V G)… applied to k^power: [power]; null where there is none. */
+  readonly dressed: readonly Column[] | null;
+  /** The same ending in V(·, external k): [column]; null where there is none. */
+  readonly ending: readonly Column[] | null;
+  /** ∫ k^b G dressed: [a * basis + b]. */
+  readonly dressedMoments: Numbers | null;
+  /** What stands behind the leftmost contact: coefficient of k^power, [column * basis + power]. */
+  readonly u: Numbers;
+  /** ∫ k^b G R: [column * basis + b]. */
+  readonly moments: Numbers;
 }
 
 /**
  * The order-by-order recursion R_ν = W_ν + Σ_{0<α<ν} W_α G R_{ν-α} on a momentum grid, for several energies (problems) at once.
- * Contacts act through the moments ∫ G k^b R, everything else through its matrix, so the cost grows with the number of monomials.
- * Call `step(n)` for n = 0, 1, …; before the next step a counterterm may be added to R_n.
+ * Contacts are of finite rank, so a chain falls into runs of other kernels between them: only those act on functions of momentum, each run
+ * once; everything else is small matrices of loop moments. Call `step(n)` for n = 0, 1, …; before the next step a counterterm may be added.
+ * `morePowers`: powers of momentum that counterterms bring in.
  */
 export class GridChain {
-  private readonly results: Amplitude[][] = [];
-  private readonly counterterms: { n: number; parts: readonly ScaledVertex[] }[] = [];
-  private readonly powers: Float64Array[][];
-  private readonly fixed = new Map<string, Columns>();
+  private readonly shares: Share[][] = [];
+  private readonly operator: DenseOperator;
+  private readonly contacts: Placed<Contact>[] = [];
+  private readonly dense: Placed<ScaledVertex>[] = [];
+  private readonly basis: readonly number[];
+  private readonly nodes: number;
+  /** k^power at the points: [problem][power]. */
+  private readonly states: Column[][];
 
-  /** `size`: powers 0..size-1 of a momentum occur in contacts. */
   constructor(
     private readonly list: MonomialList,
-    private readonly vertices: readonly Vertex[],
-    private readonly kernels: GridKernels,
+    vertices: readonly Vertex[],
+    kernels: GridKernels,
     private readonly problems: readonly LoopWeights[],
-    private readonly size: number,
+    morePowers: readonly number[] = [],
   ) {
-    this.powers = problems.map(problem => {
-      const rows = [new Float64Array(problem.points.length).fill(1)];
-      for (let a = 1; a < 2 * size; a++) rows.push(rows[a - 1].map((v, j) => v * problem.points[j]));
-      return rows;
-    });
+    this.nodes = kernels.grid.nodes.length;
+    this.operator = new DenseOperator(kernels, problems);
+    this.basis = [...new Set([...contactPowers(vertices), ...morePowers])].sort((x, y) => x - y);
+    this.states = problems.map(p => this.basis.map(a => ({ re: p.points.map(k => k ** a), im: null })));
+    vertices.forEach((vertex, i) => this.place(vertices.map((_, j) => (i === j ? 1 : 0)), vertex, { re: 1, im: 0 }));
   }
 
   step(n: number): void {
-    const { exponents, factors } = this.list.terms[n];
-    const links: { parts: readonly ScaledVertex[]; rest: number }[] = [];
-    if (factors > 1) {
-      exponents.forEach((m, i) => m > 0 && links.push({ parts: [{ vertex: this.vertices[i], strength: ONE }], rest: this.list.without[n][i] }));
-    }
-    for (const z of this.counterterms) {
-      const inner = this.list.terms[z.n].exponents;
-      if (isProperPart(inner, exponents)) links.push({ parts: z.parts, rest: this.list.indexOf(difference(exponents, inner)) });
-    }
-    const single = factors === 1 ? this.vertices[exponents.findIndex(m => m > 0)] : null;
-    const dense = this.denseParts(links);
-    this.results[n] = this.problems.map((problem, at) => {
-      const u = emptyColumns(problem.externals.length, this.size);
-      const d = dense[at];
-      if (single) this.addVertex(single, ONE, at, u, d);
-      for (const link of links) {
-        const moments = this.results[link.rest][at].moments;
-        for (const { vertex, strength } of link.parts) if (vertex.contact) addContact(vertex.contact, strength, problem.E, moments, u);
-      }
-      return this.finish(at, u, d.used ? d : null);
+    const { exponents } = this.list.terms[n];
+    const runs = this.dense.filter(d => isPart(d.content, exponents)).map(d => ({ ...d.part, rest: this.rest(exponents, d.content) }));
+    const dressed = this.sumOfRuns(runs, rest => (rest < 0 ? this.states : this.problems.map((_, at) => this.shares[rest][at].dressed ?? [])), null);
+    const ending = this.sumOfRuns(runs, rest => (rest < 0 ? null : this.problems.map((_, at) => this.shares[rest][at].ending ?? [])), this.problems);
+    this.shares[n] = this.problems.map((problem, at) => {
+      const u = zeros(problem.externals.length * this.basis.length);
+      for (const { content, part } of this.contacts) if (isPart(content, exponents)) this.addContact(part, at, this.rest(exponents, content), u);
+      return this.finish(n, at, emptyToNull(dressed[at]), emptyToNull(ending[at]), u);
     });
   }
 
-  /** Adds Σ strength * vertex to R_n and to every later monomial that holds it. */
+  /** Adds Σ strength * vertex to R_n and to every later monomial that holds it. `morePowers` must have named the powers of its contacts. */
   addCounterterm(n: number, parts: readonly ScaledVertex[]): void {
-    this.counterterms.push({ n, parts });
-    this.results[n] = this.results[n].map((amplitude, at) => {
-      const problem = this.problems[at];
-      const d: Dense = { ...emptyColumns(problem.externals.length, problem.points.length), used: amplitude.d !== null };
-      if (amplitude.d) for (let c = 0; c < d.re.length; c++) (d.re[c].set(amplitude.d.re[c]), d.im[c].set(amplitude.d.im[c]));
-      for (const { vertex, strength } of parts) this.addVertex(vertex, strength, at, amplitude.u, d);
-      return this.finish(at, amplitude.u, d.used ? d : null);
+    const { exponents } = this.list.terms[n];
+    for (const { vertex, strength } of parts) this.place(exponents, vertex, strength);
+    const newRuns = parts.filter(p => !p.vertex.contact).map(p => ({ ...p, rest: -1 }));
+    const dressed = this.sumOfRuns(newRuns, () => this.states, null);
+    const ending = this.sumOfRuns(newRuns, () => null, this.problems);
+    this.shares[n] = this.shares[n].map((share, at) => {
+      const u = { re: share.u.re.slice(), im: share.u.im.slice() };
+      for (const { vertex, strength } of parts) if (vertex.contact) this.addContact({ terms: vertex.contact, strength }, at, -1, u);
+      return this.finish(n, at, joined(share.dressed, dressed[at]), joined(share.ending, ending[at]), u);
     });
   }
 
   /** R_n(external row, external column) of a problem. */
   amplitude(n: number, at: number, row: number, column: number): Complex {
-    const { u, d } = this.results[n][at];
-    const point = this.kernels.grid.nodes.length + row;
-    let re = d ? d.re[column][point] : 0;
-    let im = d ? d.im[column][point] : 0;
-    for (let a = 0; a < this.size; a++) {
-      re += u.re[column][a] * this.powers[at][a][point];
-      im += u.im[column][a] * this.powers[at][a][point];
-    }
-    return { re, im };
+    const point = this.nodes + row;
+    const size = this.basis.length;
+    const { ending, u } = this.shares[n][at];
+    const sum = { re: ending ? ending[column].re[point] : 0, im: ending?.[column].im?.[point] ?? 0 };
+    const add = (functions: readonly Column[], v: Numbers) => {
+      for (let a = 0; a < size; a++) {
+        const [x, y] = [functions[a].re[point], functions[a].im?.[point] ?? 0];
+        const s = column * size + a;
+        sum.re += x * v.re[s] - y * v.im[s];
+        sum.im += x * v.im[s] + y * v.re[s];
+      }
+    };
+    add(this.states[at], u);
+    this.forEachDressing(n, at, (share, behind) => add(share.dressed!, behind.u));
+    return sum;
   }
 
-  private finish(at: number, u: Columns, d: Columns | null): Amplitude {
-    const { size, problems, powers } = this;
-    const { g, loopMoments } = problems[at];
-    const moments = emptyColumns(u.re.length, size);
-    const loop = g.re.length;
-    for (let c = 0; c < u.re.length; c++) {
-      for (let b = 0; b < size; b++) {
-        let re = 0;
-        let im = 0;
-        for (let a = 0; a < size; a++) {
-          re += loopMoments.re[a + b] * u.re[c][a] - loopMoments.im[a + b] * u.im[c][a];
-          im += loopMoments.re[a + b] * u.im[c][a] + loopMoments.im[a + b] * u.re[c][a];
-        }
-        if (d) {
-          const k = powers[at][b];
-          for (let j = 0; j < loop; j++) re += k[j] * (g.re[j] * d.re[c][j] - g.im[j] * d.im[c][j]);
-          for (let j = 0; j < loop; j++) im += k[j] * (g.re[j] * d.im[c][j] + g.im[j] * d.re[c][j]);
-        }
-        moments.re[c][b] = re;
-        moments.im[c][b] = im;
-      }
-    }
-    return { u, d, moments };
+  private place(content: Monomial, vertex: Vertex, strength: Complex): void {
+    if (vertex.contact) this.contacts.push({ content, part: { terms: vertex.contact, strength } });
+    else this.dense.push({ content, part: { vertex, strength } });
   }
 
-  /** Adds strength * V(·, k) for each external k. */
-  private addVertex(vertex: Vertex, strength: Complex, at: number, u: Columns, d: Dense): void {
-    const problem = this.problems[at];
-    problem.externals.forEach((k, c) => {
-      if (vertex.contact) {
-        const moments = emptyColumns(1, this.size);
-        for (let b = 0; b < this.size; b++) moments.re[0][b] = k ** b;
-        addContact(vertex.contact, strength, problem.E, moments, { re: [u.re[c]], im: [u.im[c]] });
-        return;
-      }
-      const key = `${vertex.name}/${at}/${c}`;
-      let column = this.fixed.get(key);
-      if (!column) {
-        const values = kernelColumn(vertex.element, problem.points, k, problem.E.re);
-        this.fixed.set(key, (column = { re: [values.re], im: [values.im] }));
-      }
-      addScaled(column.re[0], column.im[0], strength, d.re[c], d.im[c]);
-      d.used = true;
-    });
+  /** Index of what is left of a monomial; -1 where nothing is. */
+  private rest(exponents: Monomial, content: Monomial): number {
+    return this.list.indexOf(difference(exponents, content));
   }
 
-  /** Σ over the links of what the kernels that are no contacts contribute, one set of columns per problem. */
-  private denseParts(links: readonly { parts: readonly ScaledVertex[]; rest: number }[]): Dense[] {
-    const total: Dense[] = this.problems.map(p => ({ ...emptyColumns(p.externals.length, p.points.length), used: false }));
-    for (const link of links) {
-      for (const { vertex, strength } of link.parts) {
-        if (vertex.contact) continue;
-        this.applyDense(vertex, link.rest).forEach((columns, at) => {
-          total[at].used = true;
-          columns.re.forEach((re, c) => addScaled(re, columns.im[c], strength, total[at].re[c], total[at].im[c]));
-        });
-      }
+  /** Σ strength V G (functions of the rest), plus strength V(·, k) where the run ends on an external momentum. */
+  private sumOfRuns(
+    runs: readonly (ScaledVertex & { rest: number })[],
+    functionsOf: (rest: number) => readonly (readonly Column[])[] | null,
+    ends: readonly LoopWeights[] | null,
+  ): Column[][] {
+    const total: Column[][] = this.problems.map(() => []);
+    for (const { vertex, strength, rest } of runs) {
+      const functions = functionsOf(rest);
+      const values = functions ? (functions.some(f => f.length) ? this.operator.apply(vertex, functions) : null) : null;
+      const columns = values ?? (ends && rest < 0 ? ends.map((p, at) => p.externals.map(k => this.operator.column(vertex, at, k))) : null);
+      columns?.forEach((list, at) => {
+        total[at] = list.map((x, c) => scaledSum(total[at][c] ?? null, x, strength));
+      });
     }
     return total;
   }
 
-  /** V G R_rest at all points of each problem. */
-  private applyDense(vertex: Vertex, rest: number): Columns[] {
-    const nodes = this.kernels.grid.nodes.length;
-    const inputs = this.problems.map((_, at) => this.loopInput(rest, at));
-    const outputs = this.problems.map(p => emptyColumns(p.externals.length, p.points.length));
-    const groups = new Map<KernelOnGrid, number[]>();
-    this.problems.forEach((p, at) => {
-      const kernel = this.kernels.of(vertex, p.E.re);
-      groups.set(kernel, [...(groups.get(kernel) ?? []), at]);
-    });
-    for (const [kernel, members] of groups) {
-      applyKernel(kernel, members.flatMap(at => inputs[at].re), members.flatMap(at => inputs[at].im), members.flatMap(at => outputs[at].re), members.flatMap(at => outputs[at].im));
-    }
-    this.problems.forEach((problem, at) => {
-      const edge = this.edgeOf(vertex, at);
-      const rows = problem.externals.length;
-      for (let c = 0; c < rows; c++) {
-        const [x, y] = [inputs[at].re[c], inputs[at].im[c]];
-        const [re, im] = [outputs[at].re[c], outputs[at].im[c]];
-        for (let r = 0; r < rows; r++) {
-          for (let j = 0; j < nodes; j++) {
-            re[nodes + r] += edge.re[0][r * nodes + j] * x[j] - edge.im[0][r * nodes + j] * y[j];
-            im[nodes + r] += edge.re[0][r * nodes + j] * y[j] + edge.im[0][r * nodes + j] * x[j];
-          }
-        }
-        for (let s = nodes; s < problem.g.re.length; s++) {
-          const column = edge.re[1 + s - nodes];
-          const imaginary = edge.im[1 + s - nodes];
-          for (let j = 0; j < re.length; j++) {
-            re[j] += column[j] * x[s] - imaginary[j] * y[s];
-            im[j] += column[j] * y[s] + imaginary[j] * x[s];
-          }
-        }
-      }
-    });
-    return outputs;
-  }
-
-  /** G R at the loop points. */
-  private loopInput(rest: number, at: number): Columns {
-    const { g } = this.problems[at];
-    const { u, d } = this.results[rest][at];
-    const input = emptyColumns(u.re.length, g.re.length);
-    for (let c = 0; c < u.re.length; c++) {
-      for (let j = 0; j < g.re.length; j++) {
-        let re = d ? d.re[c][j] : 0;
-        let im = d ? d.im[c][j] : 0;
-        for (let a = 0; a < this.size; a++) {
-          re += u.re[c][a] * this.powers[at][a][j];
-          im += u.im[c][a] * this.powers[at][a][j];
-        }
-        input.re[c][j] = g.re[j] * re - g.im[j] * im;
-        input.im[c][j] = g.re[j] * im + g.im[j] * re;
+  /** u_a += strength Σ_b c_ab E^e moment_b of the rest (k^b of the external momentum where nothing is left). */
+  private addContact({ terms, strength }: Contact, at: number, rest: number, u: Numbers): void {
+    const { E, externals } = this.problems[at];
+    const size = this.basis.length;
+    const moments = rest < 0 ? null : this.shares[rest][at].moments;
+    for (const t of terms) {
+      let c: Complex = { re: strength.re * t.re - strength.im * t.im, im: strength.re * t.im + strength.im * t.re };
+      for (let j = 0; j < t.e; j++) c = { re: c.re * E.re - c.im * E.im, im: c.re * E.im + c.im * E.re };
+      const [a, b] = [this.basis.indexOf(t.a), this.basis.indexOf(t.b)];
+      for (let column = 0; column < externals.length; column++) {
+        const re = moments ? moments.re[column * size + b] : externals[column] ** t.b;
+        const im = moments ? moments.im[column * size + b] : 0;
+        u.re[column * size + a] += c.re * re - c.im * im;
+        u.im[column * size + a] += c.re * im + c.im * re;
       }
     }
-    return input;
   }
 
-  /** [0]: rows from the nodes to the external momenta; [1…]: columns from each on-shell momentum to all points. */
-  private edgeOf(vertex: Vertex, at: number): Columns {
-    const key = `${vertex.name}/${at}`;
-    const known = this.fixed.get(key);
-    if (known) return known;
+  private finish(n: number, at: number, dressed: readonly Column[] | null, ending: readonly Column[] | null, u: Numbers): Share {
     const problem = this.problems[at];
-    const rows = kernelRows(vertex.element, this.kernels.grid, Float64Array.from(problem.externals), vertex.ridge, problem.E.re);
-    const onShell = problem.externals.slice(0, problem.g.re.length - this.kernels.grid.nodes.length);
-    const columns = onShell.map(k => kernelColumn(vertex.element, problem.points, k, problem.E.re));
-    const edge = { re: [rows.re, ...columns.map(c => c.re)], im: [rows.im, ...columns.map(c => c.im)] };
-    this.fixed.set(key, edge);
-    return edge;
+    const size = this.basis.length;
+    const columns = problem.externals.length;
+    const dressedMoments = dressed && this.momentsOf(dressed, at);
+    const moments = ending ? this.momentsOf(ending, at) : zeros(columns * size);
+    const { loopMoments } = problem;
+    for (let column = 0; column < columns; column++) {
+      for (let b = 0; b < size; b++) {
+        for (let a = 0; a < size; a++) {
+          const power = this.basis[a] + this.basis[b];
+          addProduct(moments, column * size + b, loopMoments.re[power], loopMoments.im[power], u, column * size + a);
+        }
+      }
+    }
+    this.forEachDressing(n, at, (share, behind) => {
+      const j = share.dressedMoments!;
+      for (let column = 0; column < columns; column++) {
+        for (let b = 0; b < size; b++) {
+          for (let a = 0; a < size; a++) addProduct(moments, column * size + b, j.re[a * size + b], j.im[a * size + b], behind.u, column * size + a);
+        }
+      }
+    });
+    return { dressed, ending, dressedMoments, u, moments };
   }
-}
 
-interface Dense extends Columns {
-  used: boolean;
-}
-
-const ONE: Complex = { re: 1, im: 0 };
-
-function emptyColumns(columns: number, length: number): Columns {
-  return { re: Array.from({ length: columns }, () => new Float64Array(length)), im: Array.from({ length: columns }, () => new Float64Array(length)) };
-}
-
-function addScaled(re: Float64Array, im: Float64Array, s: Complex, intoRe: Float64Array, intoIm: Float64Array): void {
-  for (let j = 0; j < intoRe.length; j++) {
-    intoRe[j] += s.re * re[j] - s.im * im[j];
-    intoIm[j] += s.re * im[j] + s.im * re[j];
-  }
-}
-
-/** u_a += strength Σ_b c_ab E^e moment_b. */
-function addContact(terms: NonNullable<Vertex['contact']>, strength: Complex, E: Complex, moments: Columns, u: Columns): void {
-  for (const t of terms) {
-    let c: Complex = { re: strength.re * t.re - strength.im * t.im, im: strength.re * t.im + strength.im * t.re };
-    for (let j = 0; j < t.e; j++) c = { re: c.re * E.re - c.im * E.im, im: c.re * E.im + c.im * E.re };
-    for (let column = 0; column < u.re.length; column++) {
-      const re = moments.re[column][t.b];
-      const im = moments.im[column][t.b];
-      u.re[column][t.a] += c.re * re - c.im * im;
-      u.im[column][t.a] += c.re * im + c.im * re;
+  /** Each proper part δ of monomial n that has a run of other kernels, with what is left behind it. */
+  private forEachDressing(n: number, at: number, visit: (share: Share, behind: Share) => void): void {
+    if (!this.dense.length || !this.basis.length) return;
+    const { exponents } = this.list.terms[n];
+    for (let inner = 0; inner < n; inner++) {
+      const share = this.shares[inner][at];
+      if (!share.dressed || !isPart(this.list.terms[inner].exponents, exponents)) continue;
+      const rest = this.rest(exponents, this.list.terms[inner].exponents);
+      if (rest >= 0) visit(share, this.shares[rest][at]);
     }
   }
+
+  /** ∫ k^b G f: [function * basis + b]. */
+  private momentsOf(functions: readonly Column[], at: number): Numbers {
+    const { g } = this.problems[at];
+    const size = this.basis.length;
+    const result = zeros(functions.length * size);
+    functions.forEach((f, c) => {
+      for (let b = 0; b < size; b++) {
+        const k = this.states[at][b].re;
+        let re = 0;
+        let im = 0;
+        for (let j = 0; j < g.re.length; j++) re += k[j] * (g.re[j] * f.re[j] - (f.im ? g.im[j] * f.im[j] : 0));
+        if (f.im || this.problems[at].E.im !== 0) for (let j = 0; j < g.re.length; j++) im += k[j] * (g.im[j] * f.re[j] + (f.im ? g.re[j] * f.im[j] : 0));
+        result.re[c * size + b] = re;
+        result.im[c * size + b] = im;
+      }
+    });
+    return result;
+  }
+}
+
+const isPart = (inner: Monomial, outer: Monomial): boolean => inner.every((m, i) => m <= outer[i]);
+const zeros = (n: number): Numbers => ({ re: new Float64Array(n), im: new Float64Array(n) });
+const emptyToNull = (columns: readonly Column[]): readonly Column[] | null => (columns.length ? columns : null);
+
+function addProduct(into: Numbers, at: number, re: number, im: number, x: Numbers, from: number): void {
+  into.re[at] += re * x.re[from] - im * x.im[from];
+  into.im[at] += re * x.im[from] + im * x.re[from];
+}
+
+/** total + strength * x. */
+function scaledSum(total: Column | null, x: Column, strength: Complex): Column {
+  if (!total && strength.re === 1 && strength.im === 0) return x;
+  const complex = Boolean(x.im) || strength.im !== 0 || Boolean(total?.im);
+  const sum = { re: total ? total.re.slice() : new Float64Array(x.re.length), im: complex ? (total?.im?.slice() ?? new Float64Array(x.re.length)) : null };
+  addMultiple(x, strength, sum);
+  return sum;
+}
+
+function joined(before: readonly Column[] | null, added: readonly Column[]): readonly Column[] | null {
+  if (!added.length) return before;
+  return added.map((x, c) => (before ? scaledSum(before[c], x, { re: 1, im: 0 }) : x));
 }

@@ -55,13 +55,11 @@ export function growsAs(cutoffs: readonly number[], y: readonly Complex[], predi
   const growing = Array.from({ length: log + 2 }, (_, j) => ({ power, log: log + 1 - j }));
   const falling = [1, 2, 3].flatMap(d => (d === 1 ? [2, 1, 0] : [1, 0]).map(b => ({ power: power - d, log: b }))).slice(0, cutoffs.length - growing.length - 2);
   const last = Math.log(cutoffs[cutoffs.length - 1]);
-  const sizes = [y.map(v => v.re), y.map(v => v.im)].map(part => {
-    const fit = fitGrowth(cutoffs, part, growing, falling);
-    return fit ? growing.map((g, j) => Math.abs(fit.coefficients[j]) * last ** g.log) : null;
-  });
-  if (sizes.some(s => s === null)) return false;
-  const unpredicted = Math.hypot(sizes[0]![0], sizes[1]![0]);
-  const wanted = Math.hypot(sizes[0]![1], sizes[1]![1]);
+  const fit = growthFit(cutoffs, growing, falling);
+  if (!fit) return false;
+  const sizes = [y.map(v => v.re), y.map(v => v.im)].map(part => fit(part).coefficients.map((c, j) => Math.abs(c) * last ** growing[j].log));
+  const unpredicted = Math.hypot(sizes[0][0], sizes[1][0]);
+  const wanted = Math.hypot(sizes[0][1], sizes[1][1]);
   return unpredicted < 0.05 * wanted;
 }
 
@@ -71,24 +69,40 @@ export interface Growth {
   readonly log: number;
 }
 
-/** Coefficients of the wanted growths L^a ln^b(L/scale), fitted together with terms that fall off; and how far they move when the lowest cutoff is dropped. */
-export function fitGrowth(cutoffs: readonly number[], y: readonly number[], growing: readonly Growth[], falling: readonly Growth[], scale = 1): { coefficients: number[]; shift: number[] } | null {
+/**
+ * The least-squares fit of Σ c L^a ln^b(L/scale) to numbers at these cutoffs, as a function of the numbers: coefficients of the wanted
+ * growths (terms that fall off are fitted beside them), and how far each moves when the lowest cutoff is dropped. Null where the cutoffs
+ * are too few or do not tell the terms apart.
+ */
+export function growthFit(
+  cutoffs: readonly number[],
+  growing: readonly Growth[],
+  falling: readonly Growth[],
+  scale = 1,
+): ((y: readonly number[]) => { coefficients: number[]; shift: number[] }) | null {
   const all = [...growing, ...falling];
-  const solve = (from: number): number[] | null => {
-    const unit = cutoffs[from];
-    const highest = Math.max(0, ...growing.map(g => g.power));
-    // Each row in units of the fastest growth, so that every cutoff counts alike.
-    const rows = cutoffs.slice(from).map(L => all.map(g => (L / unit) ** (g.power - highest) * Math.log(L / scale) ** g.log));
-    const rhs = y.slice(from).map((v, j) => v * (cutoffs[from + j] / unit) ** -highest);
-    return leastSquares(rows, rhs)?.map((c, j) => c * unit ** -all[j].power) ?? null;
-  };
   if (cutoffs.length < all.length + 2) return null;
-  const whole = solve(0);
-  const shorter = solve(1);
+  const whole = fitMatrix(cutoffs, all, scale);
+  const shorter = fitMatrix(cutoffs.slice(1), all, scale);
   if (!whole || !shorter) return null;
-  return { coefficients: whole.slice(0, growing.length), shift: growing.map((_, j) => Math.abs(whole[j] - shorter[j])) };
+  return y => {
+    const coefficients = growing.map((_, j) => dot(whole[j], y));
+    const others = growing.map((_, j) => dot(shorter[j], y.slice(1)));
+    return { coefficients, shift: coefficients.map((c, j) => Math.abs(c - others[j])) };
+  };
 }
 
+/** [term][cutoff]: coefficient = Σ matrix * y. Rows are weighed by the fastest growth, so that every cutoff counts alike. */
+function fitMatrix(cutoffs: readonly number[], all: readonly Growth[], scale: number): number[][] | null {
+  const unit = cutoffs[0];
+  const highest = Math.max(0, ...all.map(g => g.power));
+  const rows = cutoffs.map(L => all.map(g => (L / unit) ** (g.power - highest) * Math.log(L / scale) ** g.log));
+  const columns = cutoffs.map((L, j) => leastSquares(rows, cutoffs.map((_, i) => (i === j ? (L / unit) ** -highest : 0))));
+  if (columns.some(c => c === null)) return null;
+  return all.map((g, t) => columns.map(c => c![t] * unit ** -g.power));
+}
+
+const dot = (x: readonly number[], y: readonly number[]): number => x.reduce((s, v, j) => s + v * y[j], 0);
 const modulus = (x: Complex): number => Math.hypot(x.re, x.im);
 const subtract = (x: Complex, y: Complex): Complex => ({ re: x.re - y.re, im: x.im - y.im });
 const times = (x: Complex, s: number): Complex => ({ re: x.re * s, im: x.im * s });

@@ -2,7 +2,8 @@ import type { Complex } from '../algebra/expression';
 import { momentumGrid } from '../model/momentum-grid';
 import { gridWishes } from './amplitudes';
 import { energyAway } from './contact-divergences';
-import { GridChain, GridKernels, type ScaledVertex } from './grid-chain';
+import { GridKernels } from './dense-words';
+import { GridChain, type ScaledVertex } from './grid-chain';
 import { loopWeights } from './loop-weights';
 import { kernelScales, oscillationLength, type Setup } from './setup';
 import { externalsAt } from './subtraction';
@@ -28,6 +29,8 @@ export interface LadderWishes {
   /** Different external momenta (each with both signs in dimension 1, full). */
   readonly momenta: number;
   readonly pointsPerPanel: number;
+  /** Powers of momentum that counterterms on the ladder may bring in. */
+  readonly powers: readonly number[];
   /** Fastest bare growth: steep ones take a short ladder, since rounding of the leading term hides what lies below it. */
   readonly steepest: number;
 }
@@ -38,7 +41,7 @@ const START = 50;
 const RATIO = { gentle: 1.5422107, steep: 1.2713049 };
 
 export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
-  const { kinematics, regulator, list, vertices, size } = setup;
+  const { kinematics, regulator, list, vertices } = setup;
   const scales = kernelScales(vertices);
   const length = oscillationLength(vertices);
   const soft = Math.max(setup.momentum, ...scales.filter(s => s < 1e3 * setup.momentum));
@@ -50,9 +53,9 @@ export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const energies = Array.from({ length: wishes.energies }, (_, j) => energyAway(kinematics, soft, 0.7310585786 + 0.6 * j));
   const rungs = cutoffs.map(cutoff => {
     const grid = momentumGrid(kinematics, regulator, cutoff, gridWishes(setup, momenta, wishes.pointsPerPanel));
-    const problems = energies.map(E => loopWeights(kinematics, regulator, grid, E, false, externals, 2 * size));
+    const problems = energies.map(E => loopWeights(kinematics, regulator, grid, E, false, externals, 2 * Math.max(setup.size, ...wishes.powers)));
     const kernels = new GridKernels(grid);
-    const start = () => new GridChain(list, vertices, kernels, problems, size);
+    const start = () => new GridChain(list, vertices, kernels, problems, wishes.powers);
     return { start, chain: start(), cutoff };
   });
   return {

@@ -50,10 +50,9 @@ export function setUp(spec: ModelSpec): { setup: Setup | null; remarks: readonly
   if ([...vertices, ...forms].some(v => v === null)) return { setup: null, remarks };
   const kinematics = kinematicsOf(spec);
   const all = [...vertices, ...forms].map(v => v!);
-  const angular = spec.wave.kind === 'angular' ? Math.abs(spec.wave.number) : 0;
   const behaviours = vertices.map(v => {
     try {
-      return hardBehaviour(v!.element.shape, kinematics, angular);
+      return hardBehaviour(v!.element.shape, kinematics, spec.wave.kind === 'angular' ? Math.abs(spec.wave.number) : 0);
     } catch (error) {
       if (!(error instanceof UnknownBehaviour)) throw error;
       return null;
@@ -103,4 +102,9 @@ export function kernelScales(vertices: readonly Vertex[]): number[] {
 export function oscillationLength(vertices: readonly Vertex[]): number {
   const phases = vertices.flatMap(v => localParts(v.element.shape)).flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])]);
   return Math.max(0, ...phases.map(t => Math.abs(t.phase)));
+}
+
+/** l, |m|, or 1 for the odd wave: amplitudes start with p^l k^l. */
+export function partialWave(wave: ModelSpec['wave']): number {
+  return wave.kind === 'angular' ? Math.abs(wave.number) : wave.kind === 'odd' ? 1 : 0;
 }

@@ -10,7 +10,7 @@ import type { StrengthLaw } from './contact-declared';
 import { fittedStrengths, minimalCounterterms } from './declared-strengths';
 import { buildLadder, type Ladder, type LadderWishes } from './ladder';
 import { isProperPart } from './monomials';
-import type { Setup } from './setup';
+import { partialWave, type Setup } from './setup';
 import type { SymbolicVerdicts } from './verdicts';
 import { formVertex } from './form-vertex';
 
@@ -35,7 +35,7 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   const exact = symbolic.contacts ? contactOverall(symbolic.contacts) : [];
   const dense = symbolic.terms.map(t => !t.contact && t.verdict !== 'undecided' && !t.tooSoft);
   const fitted: (FittedOverall | null)[] = symbolic.terms.map(() => null);
-  const ladder = buildLadder(setup, ladderWishes(symbolic, dense));
+  const ladder = buildLadder(setup, ladderWishes(setup, symbolic, dense));
   const confirmed = confirm(symbolic, ladder, shouldStop);
   const fits = symbolic.terms.some((t, n) => dense[n] && t.overallDegree >= 0);
   if (fits) fitDense(setup, symbolic, ladder, dense, exact, fitted, 1, shouldStop);
@@ -68,11 +68,12 @@ function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][numb
   return `Whether ${name} diverges is open: power counting says that ${said}, the numbers on a ladder of cutoffs do not bear it out.`;
 }
 
-function ladderWishes(symbolic: SymbolicVerdicts, dense: readonly boolean[]): LadderWishes {
+function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly boolean[]): LadderWishes {
   const degree = Math.max(-1, ...symbolic.terms.map((t, n) => (dense[n] ? t.overallDegree : -1)));
   const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
-  if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 16, steepest };
-  return { rungs: 11 + Math.ceil(degree / 2), energies: 1 + Math.floor(degree / 2), momenta: 2 + Math.floor(degree / 2), pointsPerPanel: 16, steepest };
+  if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 16, powers: [], steepest };
+  const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a).filter(a => setup.kinematics.signed || a % 2 === 0).map(a => a + partialWave(setup.spec.wave));
+  return { rungs: 11 + Math.ceil(degree / 2), energies: 1 + Math.floor(degree / 2), momenta: 2 + Math.floor(degree / 2), pointsPerPanel: 16, powers, steepest };
 }
 
 /** Walks the ladder with the bare series: contacts against their exact values, everything else by its growth. */
