@@ -11,7 +11,14 @@ export function expr(text: string): Expr {
 }
 
 function convert(node: MathNode): Expr {
-  const n = node as unknown as { type: string; value: number; name: string; fn: string & { name: string }; args: MathNode[]; content: MathNode };
+  const n = node as unknown as {
+    type: string;
+    value: number;
+    name: string;
+    fn: string & { name: string };
+    args: MathNode[];
+    content: MathNode;
+  };
   switch (n.type) {
     case 'ConstantNode':
       return number(n.value);

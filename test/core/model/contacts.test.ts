@@ -2,7 +2,13 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { at, elementOf } from './potentials';
 
-const terms = (kernel: string, args: 'pk' | 'pkE' | 'q' | 'x' | 'r', dimension: 1 | 2 | 3, wave: 'full' | 'even' | 'odd' | number, couplings = {}) => {
+const terms = (
+  kernel: string,
+  args: 'pk' | 'pkE' | 'q' | 'x' | 'r',
+  dimension: 1 | 2 | 3,
+  wave: 'full' | 'even' | 'odd' | number,
+  couplings = {},
+) => {
   const { shape } = elementOf(kernel, args, dimension, wave, couplings);
   if (shape.kind !== 'polynomial') throw new Error(shape.kind);
   return Object.fromEntries(shape.terms.map(t => [`p${t.a}k${t.b}E${t.e}`, t.im === 0 ? t.re : [t.re, t.im]]));
@@ -36,7 +42,11 @@ describe('contacts', () => {
     expect(re).toBeCloseTo(2 * Math.cos(1.7 * 0.7), 14);
     expect(im).toBeCloseTo(-2 * Math.sin(1.7 * 0.7), 14);
     expect(element.real).toBe(false);
-    expect(element.shape).toMatchObject({ kind: 'local', tail: [{ coefficient: { re: 2, im: 0 }, power: 0, phase: -0.7 }], backwardTail: [{ phase: 0.7 }] });
+    expect(element.shape).toMatchObject({
+      kind: 'local',
+      tail: [{ coefficient: { re: 2, im: 0 }, power: 0, phase: -0.7 }],
+      backwardTail: [{ phase: 0.7 }],
+    });
   });
   it('two opposite deltas', () => {
     const { re, im } = at(elementOf('c/a*(delta(x + a/2) - delta(x - a/2))', 'x', 1, 'full', { c: 0.3, a: 0.5 }), 2, 0.7);
@@ -63,11 +73,14 @@ describe('contacts', () => {
         const [p, k] = [0.8, 1.7];
         // The rule below is exact for such polynomials: 64 equal steps around the circle, or a fine midpoint rule in x to 1e-6.
         let mean = 0;
-        if (dimension === 2) for (let n = 0; n < 64; n++) mean += (p * p + k * k - 2 * p * k * Math.cos((Math.PI * n) / 32)) ** j * Math.cos((l * Math.PI * n) / 32) / 64;
-        else for (let n = 0; n < 4000; n++) {
-          const x = -1 + (n + 0.5) / 2000;
-          mean += ((p * p + k * k - 2 * p * k * x) ** j * [1, x, (3 * x * x - 1) / 2, (5 * x ** 3 - 3 * x) / 2][l]) / 4000;
-        }
+        if (dimension === 2)
+          for (let n = 0; n < 64; n++)
+            mean += ((p * p + k * k - 2 * p * k * Math.cos((Math.PI * n) / 32)) ** j * Math.cos((l * Math.PI * n) / 32)) / 64;
+        else
+          for (let n = 0; n < 4000; n++) {
+            const x = -1 + (n + 0.5) / 2000;
+            mean += ((p * p + k * k - 2 * p * k * x) ** j * [1, x, (3 * x * x - 1) / 2, (5 * x ** 3 - 3 * x) / 2][l]) / 4000;
+          }
         expect(Math.abs(at(element, p, k).re - mean)).toBeLessThan(1e-5 * (p + k) ** (2 * j));
       }),
     );
@@ -91,7 +104,9 @@ describe('what has no matrix element is refused in one sentence', () => {
     ['i*(p - k)', 'pk', 1, 'odd', 'value', /mixes even and odd waves/],
     ['exp(-(x - 1)^2)', 'x', 1, 'even', 'value', /mixes even and odd waves/],
   ] as const)('%s', (kernel, args, dimension, wave, code, message) => {
-    expect(() => elementOf(kernel, args, dimension, wave)).toThrow(expect.objectContaining({ name: 'KernelError', code, message: expect.stringMatching(message) }));
+    expect(() => elementOf(kernel, args, dimension, wave)).toThrow(
+      expect.objectContaining({ name: 'KernelError', code, message: expect.stringMatching(message) as string }),
+    );
   });
   it('a divisor whose zero is lifted is none', () => {
     expect(at(elementOf('sin(p - k)/(p - k)', 'pk', 1, 'full'), 2, 2).re).toBeCloseTo(1, 9);

@@ -7,15 +7,34 @@ import { expr } from '../../support/expr';
 export function modelIn(dimension: 1 | 2 | 3, wave: 'full' | 'even' | 'odd' | number): ModelSpec {
   const chosen: Wave = typeof wave === 'number' ? { kind: 'angular', number: wave } : { kind: wave };
   return {
-    name: 'm', dimension, wave: chosen, units: null, mu: 0.5, masses: null, kinetic: null, couplings: [], interactions: [], counterterms: [],
-    expectations: [], cutoff: { name: 'L', value: 10, shape: { kind: 'sharp' }, declared: true, scan: null }, series: { order: 2, declared: true, points: [] },
-  } as ModelSpec;
+    name: 'm',
+    dimension,
+    wave: chosen,
+    units: null,
+    mu: 0.5,
+    masses: null,
+    kinetic: null,
+    couplings: [],
+    interactions: [],
+    counterterms: [],
+    expectations: [],
+    cutoff: { name: 'L', value: 10, shape: { kind: 'sharp' }, declared: true, scan: null },
+    series: { order: 2, declared: true, points: [] },
+  };
 }
 
 export function elementOf(
-  kernel: string, args: KernelArguments, dimension: 1 | 2 | 3, wave: 'full' | 'even' | 'odd' | number, couplings: Record<string, number> = {},
+  kernel: string,
+  args: KernelArguments,
+  dimension: 1 | 2 | 3,
+  wave: 'full' | 'even' | 'odd' | number,
+  couplings: Record<string, number> = {},
 ): MatrixElement {
-  return matrixElement({ name: 'v', arguments: args, kernel: expr(kernel), order: 1 }, modelIn(dimension, wave), new Map(Object.entries(couplings)));
+  return matrixElement(
+    { name: 'v', arguments: args, kernel: expr(kernel), order: 1 },
+    modelIn(dimension, wave),
+    new Map(Object.entries(couplings)),
+  );
 }
 
 /** V(p, k) at one point. */

@@ -1,5 +1,4 @@
 import { describe, expect, it } from 'vitest';
-import { existsSync, readFileSync } from 'node:fs';
 import large from '../../outside/data/large-momenta.json';
 import { at, elementOf } from './potentials';
 
@@ -14,7 +13,12 @@ describe('large and unequal momenta', () => {
     for (const [p, k, expected] of rows) {
       const { re } = at(element, p, k);
       // Without a closed form, what cancels between angles is bounded by the s wave's size.
-      const size = Math.max(Math.abs(expected), CLOSED.has(`${potential} ${l}`) ? 0 : Math.abs((large.values as Record<string, Record<string, Rows>>)[potential][0].find(r => r[0] === p && r[1] === k)![2]));
+      const size = Math.max(
+        Math.abs(expected),
+        CLOSED.has(`${potential} ${l}`)
+          ? 0
+          : Math.abs((large.values as Record<string, Record<string, Rows>>)[potential][0].find(r => r[0] === p && r[1] === k)![2]),
+      );
       expect(Math.abs(re - expected), `p = ${p}, k = ${k}: ${re} for ${expected}`).toBeLessThanOrEqual(1e-11 * Math.abs(size) + 1e-300);
     }
   });

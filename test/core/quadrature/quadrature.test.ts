@@ -13,12 +13,17 @@ describe('Gauss–Legendre', () => {
   });
   it('is exact for polynomials of degree 2n - 1, on any interval', () => {
     fc.assert(
-      fc.property(fc.integer({ min: 1, max: 40 }), fc.double({ min: -2, max: 2, noNaN: true }), fc.double({ min: 0.1, max: 2, noNaN: true }), (n, from, length) => {
-        const { nodes, weights } = gaussLegendreOn(n, from, from + length);
-        const degree = 2 * n - 1;
-        const sum = nodes.reduce((s, x, j) => s + weights[j] * ((x - from) / length) ** degree, 0);
-        expect(sum).toBeCloseTo(length / (degree + 1), 12);
-      }),
+      fc.property(
+        fc.integer({ min: 1, max: 40 }),
+        fc.double({ min: -2, max: 2, noNaN: true }),
+        fc.double({ min: 0.1, max: 2, noNaN: true }),
+        (n, from, length) => {
+          const { nodes, weights } = gaussLegendreOn(n, from, from + length);
+          const degree = 2 * n - 1;
+          const sum = nodes.reduce((s, x, j) => s + weights[j] * ((x - from) / length) ** degree, 0);
+          expect(sum).toBeCloseTo(length / (degree + 1), 12);
+        },
+      ),
     );
   });
 });

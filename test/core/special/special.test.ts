@@ -25,11 +25,26 @@ describe('special functions against mpmath, SciPy and GSL', () => {
   it('gamma', () => expect(worst(values.gamma, gamma, value)).toBeLessThan(5e-14));
   it('digamma', () => expect(worst(values.digamma, digamma, row => Math.max(value(row), 0.1))).toBeLessThan(1e-14));
   // A phase of 1000 is rounded by 1e-13 before the cosine is taken.
-  it('J_n', () => expect(worst(values.besselj, besselJ, amplitude(x => Math.sqrt(2 / (Math.PI * x))))).toBeLessThan(2e-14));
-  it('j_l', () => expect(worst(values.sphericalj, sphericalBessel, amplitude(x => 1 / x))).toBeLessThan(5e-15));
+  it('J_n', () =>
+    expect(
+      worst(
+        values.besselj,
+        besselJ,
+        amplitude(x => Math.sqrt(2 / (Math.PI * x))),
+      ),
+    ).toBeLessThan(2e-14));
+  it('j_l', () =>
+    expect(
+      worst(
+        values.sphericalj,
+        sphericalBessel,
+        amplitude(x => 1 / x),
+      ),
+    ).toBeLessThan(5e-15));
   it('P_l', () => expect(worst(values.legendrep, legendreP, row => Math.max(value(row), 0.1))).toBeLessThan(5e-15));
   // The reference takes the argument as a double; 1.00001 - 1 is then exact.
-  it('Q_l', () => expect(worst(values.legendreq, legendreQ, row => Math.max(value(row), Math.abs(row[1]) < 1 ? 0.1 : 0))).toBeLessThan(5e-14));
+  it('Q_l', () =>
+    expect(worst(values.legendreq, legendreQ, row => Math.max(value(row), Math.abs(row[1]) < 1 ? 0.1 : 0))).toBeLessThan(5e-14));
   it('exp(-z) i_l(z)', () => expect(worst(values.scaledModifiedSphericalBessel, scaledModifiedSphericalBessel, value)).toBeLessThan(2e-14));
 });
 

@@ -4,9 +4,10 @@ import type { Expr } from '../algebra/expression';
 import { specialFunctions } from '../special';
 import type { Range } from './transform-range';
 
-/** Places r > 0 inside the range where the argument of a step or a modulus changes sign: the potential may jump or bend there. */
+/** Places r > 0 in or at the ends of the range where the argument of a step or a modulus changes sign: the potential may jump or bend there. */
 export function findEdges(expr: Expr, variable: string, { from, to }: Range): readonly number[] {
-  const grid = Float64Array.from({ length: 4000 }, (_, j) => from * (to / from) ** (j / 3999));
+  // A little wider than the range, whose ends may be edges themselves.
+  const grid = Float64Array.from({ length: 4000 }, (_, j) => 0.7 * from * ((2 * to) / from) ** (j / 3999));
   const edges = new Set<number>();
   for (const argument of switches(expr)) {
     if (!symbolsOf(argument).has(variable)) continue;

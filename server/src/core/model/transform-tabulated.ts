@@ -52,7 +52,8 @@ export function tabulatedPiece(half: HalfLineFunction): LocalPiece {
   const largest = Math.abs(direct(1e-3 * unit)) + Math.abs(direct(unit));
   const noise = (q: number) =>
     dimension === 3 ? (2e-16 * 4 * Math.PI * panels.size) / Math.max(q, unit) : 4e-16 * panels.size * (dimension === 2 ? 2 * Math.PI : 1);
-  const end = takeover(direct, tail, noise, unit, largest);
+  // The rule for the plane takes longer the larger q is.
+  const end = takeover(direct, tail, noise, unit, (dimension === 2 ? 2e3 : 1e5) * unit);
   const first = unit * (algebraic ? 1e-7 : 0.1);
   const breaks = [0, ...octaves(first, end)];
   // sin(qr)/q wants a point away from 0.
@@ -113,9 +114,9 @@ function takeover(
   tail: readonly TailTerm[],
   noise: (q: number) => number,
   unit: number,
-  largest: number,
+  highest: number,
 ): number {
-  for (let q = 8 * unit; q < 1e5 * unit; q *= 1.5) {
+  for (let q = 8 * unit; q < highest; q *= 1.5) {
     const agrees = [1, 1.07, 1.19, 1.33].every(x => {
       const value = direct(q * x);
       return Math.abs(value - tailValue(tail, q * x)) <= 4 * noise(q * x) + 1e-13 * Math.abs(value);
@@ -124,7 +125,7 @@ function takeover(
   }
   throw new KernelError(
     'not-evaluated',
-    `The transform of this potential does not settle into its asymptotic form (of size ${largest.toPrecision(3)}); give its matrix element (p, k) instead.`,
+    `The transform of this potential does not settle into its asymptotic form; give its matrix element (p, k) instead.`,
   );
 }
 
