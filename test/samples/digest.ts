@@ -118,5 +118,5 @@ const amplitude = (z: Complex | null, largest: Complex | null, uncertainty: numb
 const findingWords = ({ code, severity, range, subject }: ReportedFinding): string =>
   [severity, code, `${range.start.line + 1}:${range.start.character + 1}`, ...(subject === undefined ? [] : [subject])].join(' ');
 
-const ends = <T>(list: readonly T[]): readonly T[] => (list.length > 2 ? [list[0]!, list[list.length - 1]!] : list);
+const ends = <T>(list: readonly T[]): readonly T[] => (list.length > 2 ? [list[0], list[list.length - 1]] : list);
 const size = (z: Complex): number => Math.hypot(z.re, z.im);
