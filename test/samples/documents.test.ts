@@ -7,6 +7,7 @@ import { plainPalette } from '../../server/src/report/palette';
 import { textReport } from '../../server/src/report/text';
 import { checkComplete } from '../../server/src/session/check';
 import { standardDefaults } from '../../server/src/session/settings';
+import { edited } from '../support/annotated';
 
 const root = join(import.meta.dirname, '../..');
 const read = (path: string): string => readFileSync(join(root, path), 'utf8');
@@ -58,6 +59,17 @@ describe('what the README prints', () => {
   test('there are the model with its divergence, and the one with its counterterm', () => {
     expect(sessions).toHaveLength(2);
   });
+});
+
+test('the quick fix of the first model adds the line that the README shows, and leaves a file that checks clean', () => {
+  const text = read('sample-specs/wire.tare');
+  const [fix] = check('', text).findings.flatMap(({ fixes }) => fixes);
+  const mended = edited(text, fix.edits);
+  const [line, ...others] = mended.split('\n').filter(one => !text.split('\n').includes(one));
+  expect(others).toEqual([]);
+  expect(read('README.md')).toContain(`\`\`\`\n${line}\n\`\`\``);
+  expect(read('sample-specs/wire-renormalised.tare')).toContain(line);
+  expect(check('', mended).findings.filter(({ severity }) => severity === 'error')).toEqual([]);
 });
 
 test('the model that the README shows is the sample', () => {
