@@ -28,10 +28,12 @@ export interface MomentumGrid {
 export interface GridWishes {
   /** The smallest momentum that matters: panels below it are as wide as it. */
   readonly smallest: number;
-  /** Up to this momentum (the largest external one) panels are no wider than `kernelScale`. */
+  /** Up to this momentum (the largest on-shell one) panels are no wider than `kernelScale`. */
   readonly external: number;
-  /** Momentum over which a local kernel changes; Infinity where there is none. Below a sharp edge panels narrow to it. */
+  /** Momentum over which a local kernel changes; Infinity where there is none. */
   readonly kernelScale: number;
+  /** Below a sharp edge panels narrow to this width, since what a local kernel makes of the edge varies over its scale. */
+  readonly edgeWidth: number;
   readonly pointsPerPanel: number;
   /** Power of momentum with which integrands grow, for the reach of a smooth cutoff. */
   readonly growth: number;
@@ -62,7 +64,7 @@ export function gridOn(kinematics: Kinematics, regulator: Regulator, cutoff: num
 }
 
 /** 0, s, 2s, 4s, … , high; halved further where external momenta or a sharp edge ask for it. */
-function breakpoints(high: number, sharp: boolean, { smallest, external, kernelScale }: GridWishes): number[] {
+function breakpoints(high: number, sharp: boolean, { smallest, external, kernelScale, edgeWidth }: GridWishes): number[] {
   const doublings = Math.min(60, Math.max(2, Math.ceil(Math.log2(high / Math.min(smallest, kernelScale)))));
   const breaks = [0];
   for (let j = doublings; j >= 0; j--) breaks.push(high / 2 ** j);
@@ -72,8 +74,8 @@ function breakpoints(high: number, sharp: boolean, { smallest, external, kernelS
     const pieces = from < external && to - from > kernelScale ? 2 ** Math.min(6, Math.ceil(Math.log2((to - from) / kernelScale))) : 1;
     for (let i = 1; i <= pieces; i++) refined.push(from + ((to - from) * i) / pieces);
   }
-  if (sharp && Number.isFinite(kernelScale)) {
-    for (let width = (high - refined[refined.length - 2]) / 2; width > kernelScale / 2; width /= 2) refined.splice(-1, 0, high - width);
+  if (sharp && Number.isFinite(edgeWidth)) {
+    for (let width = (high - refined[refined.length - 2]) / 2; width > edgeWidth / 2; width /= 2) refined.splice(-1, 0, high - width);
   }
   return refined;
 }

@@ -40,15 +40,16 @@ export interface OnShellAmplitude {
 }
 
 /** What a grid for this model has to resolve. */
-export function gridWishes(setup: Setup, momenta: readonly number[], pointsPerPanel: number): GridWishes {
+export function gridWishes(setup: Setup, cutoff: number, momenta: readonly number[], pointsPerPanel: number): GridWishes {
   const scales = kernelScales(setup.vertices);
   const length = oscillationLength(setup.vertices);
   const external = Math.max(...momenta.map(Math.abs));
   const narrowest = Math.min(Infinity, ...scales, ...(length > 0 ? [4 / length] : []));
   return {
     smallest: Math.min(...momenta.map(Math.abs).filter(p => p > 0), narrowest),
-    external: length > 0 ? Infinity : 2 * external,
+    external: length > 0 ? Infinity : external,
     kernelScale: narrowest,
+    edgeWidth: Math.max(narrowest, cutoff / 8),
     pointsPerPanel,
     growth: 2 * (setup.size - 1) + setup.kinematics.dimension,
   };
@@ -66,7 +67,7 @@ export class CutoffGrid {
     pointsPerPanel: number,
   ) {
     const subtraction = setup.counterterms.filter(c => c.spec.scheme.kind !== 'minimal').map(c => c.spec.scheme.at);
-    this.grid = momentumGrid(setup.kinematics, setup.regulator, cutoff, gridWishes(setup, [...momenta, ...subtraction], pointsPerPanel));
+    this.grid = momentumGrid(setup.kinematics, setup.regulator, cutoff, gridWishes(setup, cutoff, [...momenta, ...subtraction], pointsPerPanel));
     this.kernels = new GridKernels(this.grid);
   }
 }

@@ -1,9 +1,8 @@
 import type { Complex } from '../algebra/expression';
 import { leastSquares } from '../linear/solve';
-import type { MomentumTerm } from '../model/kernel-shape';
 import { growthFit, type Growth } from './growth-fit';
-import { groupIntoForms, type LocalForm } from './forms';
-import type { Ladder } from './ladder';
+import { groupIntoForms, type LocalCoefficient, type LocalForm } from './forms';
+import type { AmplitudePart, ChainEnd, Ladder } from './ladder';
 import { partialWave, type Setup } from './setup';
 import { vertexValue } from './subtraction';
 
@@ -22,35 +21,37 @@ export interface FittedOverall {
   readonly local: boolean;
 }
 
-/** Coefficient of one growth at [energy][row][column]. */
-interface Samples {
-  readonly growth: Growth;
-  readonly values: Complex[][][];
-  readonly shift: number;
+/** Coefficient of one growth in one part of the amplitude, at each energy, with its error. */
+interface PartSample {
+  readonly left: ChainEnd;
+  readonly right: ChainEnd;
+  readonly values: readonly Complex[];
+  readonly error: number;
 }
 
 /**
- * What grows in R_n (nested divergences already subtracted on the ladder) as forms with coefficients, logarithms as ln(L/scale): fitted at each energy and
- * pair of external momenta, then the coefficients as polynomials of the dimension that power counting leaves them, or as a kernel of the model.
+ * What grows in R_n (nested divergences already subtracted on the ladder) as forms with coefficients, logarithms as ln(L/scale). The growth is
+ * fitted in each part of the amplitude; contacts at its ends give their powers of p and k as they stand, other kernels a polynomial of the
+ * degree that power counting leaves, or the kernel itself.
  */
 export function fitOverall(setup: Setup, ladder: Ladder, n: number, degree: number, scale: number, logs: number): FittedOverall {
   const { growing, falling } = candidates(setup, degree, logs, ladder.cutoffs.length);
-  const samples = sampleGrowth(ladder, n, scale, growing, falling);
-  if (!samples) return { forms: [], local: false };
-  const largest = (s: Samples) => Math.max(...s.values.flat(2).map(modulus));
-  const lastCutoff = ladder.cutoffs[ladder.cutoffs.length - 1];
-  const reach = (s: Samples) => largest(s) * lastCutoff ** s.growth.power * Math.log(lastCutoff) ** s.growth.log;
-  const strongest = Math.max(...samples.map(reach));
+  const fit = growthFit(ladder.cutoffs, growing, falling, scale);
+  if (!fit) return { forms: [], local: false };
+  const byGrowth = sampleGrowth(ladder, n, growing, fit);
+  const last = ladder.cutoffs[ladder.cutoffs.length - 1];
+  const reach = growing.map((g, j) => largestOf(ladder, byGrowth[j]) * last ** g.power * Math.log(last) ** g.log);
+  const strongest = Math.max(...reach);
   const forms: FittedForm[] = [];
   let local = true;
-  for (const sample of samples) {
-    const size = largest(sample);
-    // Nothing there: below its own uncertainty, or below the rounding of what outgrows it.
-    if (size <= 8 * sample.shift || reach(sample) < 1e-9 * strongest) continue;
-    const fitted = asPolynomial(setup, ladder, sample, degree) ?? asKernel(setup, ladder, sample, n);
+  growing.forEach((growth, j) => {
+    // Nothing there: below its own error, or below the rounding of what outgrows it.
+    const samples = byGrowth[j].filter(s => Math.max(...s.values.map(modulus)) > 8 * s.error);
+    if (!samples.length || reach[j] < 1e-9 * strongest) return;
+    const fitted = asPolynomial(setup, ladder, growth, samples, degree) ?? asKernel(setup, ladder, growth, byGrowth[j], n);
     if (fitted) forms.push(...fitted);
     else local = false;
-  }
+  });
   return { forms, local };
 }
 
@@ -69,108 +70,149 @@ function candidates(setup: Setup, degree: number, logs: number, rungs: number): 
   return { growing, falling };
 }
 
-function sampleGrowth(ladder: Ladder, n: number, scale: number, growing: readonly Growth[], falling: readonly Growth[]): Samples[] | null {
-  const fit = growthFit(ladder.cutoffs, growing, falling, scale);
-  if (!fit) return null;
-  const samples = growing.map(growth => ({ growth, values: ladder.energies.map(() => ladder.externals.map(() => [] as Complex[])), shift: 0 }));
-  for (let e = 0; e < ladder.energies.length; e++) {
-    for (let row = 0; row < ladder.externals.length; row++) {
-      for (let column = 0; column < ladder.externals.length; column++) {
-        const y = ladder.values(n, e, row, column);
-        const re = fit(y.map(v => v.re));
-        const im = fit(y.map(v => v.im));
-        samples.forEach((s, j) => {
-          s.values[e][row].push({ re: re.coefficients[j], im: im.coefficients[j] });
-          s.shift = Math.max(s.shift, Math.hypot(re.shift[j], im.shift[j]));
-        });
-      }
-    }
-  }
-  return samples;
+function sampleGrowth(ladder: Ladder, n: number, growing: readonly Growth[], fit: NonNullable<ReturnType<typeof growthFit>>): PartSample[][] {
+  const parts = ladder.energies.map((_, e) => ladder.parts(n, e));
+  const sameEnds = (x: AmplitudePart, y: AmplitudePart) => endKey(x.left) === endKey(y.left) && endKey(x.right) === endKey(y.right);
+  const fits = parts[0].map(part =>
+    ladder.energies.map((_, e) => {
+      const values = parts[e].find(other => sameEnds(part, other))?.values ?? [];
+      const re = fit(ladder.cutoffs.map((__, j) => values[j]?.re ?? 0));
+      const im = fit(ladder.cutoffs.map((__, j) => values[j]?.im ?? 0));
+      return { re, im };
+    }),
+  );
+  return growing.map((_, j) =>
+    parts[0].map((part, at) => ({
+      left: part.left,
+      right: part.right,
+      values: fits[at].map(({ re, im }) => ({ re: re.coefficients[j], im: im.coefficients[j] })),
+      error: Math.max(...fits[at].map(({ re, im }) => Math.hypot(re.shift[j], im.shift[j]))),
+    })),
+  );
 }
+
+const endKey = (end: ChainEnd): string => ('power' in end ? `p${end.power}` : `m${end.momentum}`);
+
+/** Size of a sample in the whole amplitude, momenta in units of the largest external one. */
+function largestOf(ladder: Ladder, samples: readonly PartSample[]): number {
+  return Math.max(0, ...samples.map(s => Math.max(...s.values.map(modulus)) * endSize(ladder, s.left) * endSize(ladder, s.right)));
+}
+
+const endSize = (ladder: Ladder, end: ChainEnd): number => ('power' in end ? Math.max(...ladder.externals.map(Math.abs)) ** end.power : 1);
 
 /** Worst misfit that still counts as the form, relative to the largest sample. */
 const MISFIT = 2e-4;
 
-/** Σ c p^a k^b E^e with a + b + (fall)e <= degree - power beyond the partial wave's own p^l k^l. */
-function asPolynomial(setup: Setup, ladder: Ladder, sample: Samples, degree: number): FittedForm[] | null {
-  const { kinematics } = setup;
-  const l = partialWave(setup.spec.wave);
-  const step = kinematics.signed ? 1 : 2;
-  const room = degree - sample.growth.power + 1e-9;
+/** Σ c p^a k^b E^e: the powers of contacts as they stand, the others and E up to the dimension that is left. */
+function asPolynomial(setup: Setup, ladder: Ladder, growth: Growth, samples: readonly PartSample[], degree: number): FittedForm[] | null {
+  const room = degree - growth.power + 1e-9;
   const unit = Math.max(...ladder.externals.map(Math.abs));
-  const basis: MomentumTerm[] = [];
-  for (let e = 0; e * setup.fall! <= room && e < ladder.energies.length; e++) {
-    for (let a = 0; a + e * setup.fall! <= room; a += step) {
-      for (let b = 0; a + b + e * setup.fall! <= room; b += step) basis.push({ a: a + l, b: b + l, e, re: 1, im: 0 });
+  const energyUnit = Math.abs(setup.kinematics.energy(unit)) || 1;
+  const total = new Map<string, { a: number; b: number; e: number; re: number; im: number; error: number }>();
+  for (const group of groupByContacts(samples)) {
+    const fitted = fitGroup(setup, ladder, group, room, unit, energyUnit);
+    if (!fitted) return null;
+    for (const t of fitted) {
+      const key = `${t.a},${t.b},${t.e}`;
+      const known = total.get(key) ?? { a: t.a, b: t.b, e: t.e, re: 0, im: 0, error: 0 };
+      total.set(key, { ...known, re: known.re + t.c.re, im: known.im + t.c.im, error: known.error + t.error });
     }
   }
-  // Momenta in units of the largest external one, energies of the kinetic energy there.
-  const energyUnit = Math.abs(kinematics.energy(unit)) || 1;
-  const rows: number[][] = [];
-  const values: Complex[] = [];
-  ladder.energies.forEach((E, at) =>
-    ladder.externals.forEach((p, row) =>
-      ladder.externals.forEach((k, column) => {
-        // Real energies; an imaginary one (no threshold) is only ever met with forms that do not depend on it.
-        rows.push(basis.map(t => (p / unit) ** t.a * (k / unit) ** t.b * ((E.re || E.im) / energyUnit) ** t.e));
-        values.push(sample.values[at][row][column]);
-      }),
-    ),
-  );
+  const inUnits = (t: { a: number; b: number; e: number }) => unit ** (t.a + t.b) * energyUnit ** t.e;
+  const error = Math.max(...[...total.values()].map(t => t.error * inUnits(t)));
+  const largest = Math.max(...[...total.values()].map(t => Math.hypot(t.re, t.im) * inUnits(t)));
+  const kept = [...total.values()].filter(t => Math.hypot(t.re, t.im) * inUnits(t) > Math.max(4 * t.error * inUnits(t), 1e-6 * largest));
+  const ordered = kept.sort((s, t) => s.e - t.e || s.a + s.b - t.a - t.b || t.a - s.a);
+  const terms = symmetrised(ordered.map(t => ({ a: t.a, b: t.b, e: t.e, c: clean({ re: t.re, im: t.im }, t.error) })), t => error / inUnits(t));
+  return groupIntoForms(terms).map(f => {
+    const { a, b, e } = f.form.terms[0];
+    return { form: f.form, coefficient: f.coefficient, ...growth, uncertainty: total.get(`${a},${b},${e}`)?.error ?? error };
+  });
+}
+
+/** Samples that differ only in the external momenta of ends that are no contacts. */
+function groupByContacts(samples: readonly PartSample[]): PartSample[][] {
+  const groups = new Map<string, PartSample[]>();
+  for (const s of samples) {
+    const key = [s.left, s.right].map(end => ('power' in end ? `p${end.power}` : 'm')).join();
+    groups.set(key, [...(groups.get(key) ?? []), s]);
+  }
+  return [...groups.values()];
+}
+
+type FittedTerm = LocalCoefficient & { readonly error: number };
+
+function fitGroup(setup: Setup, ladder: Ladder, group: readonly PartSample[], room: number, unit: number, energyUnit: number): FittedTerm[] | null {
+  const l = partialWave(setup.spec.wave);
+  const step = setup.kinematics.signed ? 1 : 2;
+  const powersOf = (end: ChainEnd): number[] => ('power' in end ? [0] : Array.from({ length: Math.floor(room / step) + 1 }, (_, j) => j * step));
+  const basis: { i: number; j: number; e: number }[] = [];
+  for (let e = 0; e * setup.fall! <= room && e < ladder.energies.length; e++) {
+    for (const i of powersOf(group[0].left)) for (const j of powersOf(group[0].right)) if (i + j + e * setup.fall! <= room) basis.push({ i, j, e });
+  }
+  const value = (end: ChainEnd, power: number) => ('power' in end ? 1 : (ladder.externals[end.momentum] / unit) ** (l + power));
+  const rows = group.flatMap(s => ladder.energies.map(E => basis.map(t => value(s.left, t.i) * value(s.right, t.j) * ((E.re || E.im) / energyUnit) ** t.e)));
+  const values = group.flatMap(s => s.values);
   if (rows.length < basis.length) return null;
   const re = leastSquares(rows, values.map(v => v.re));
   const im = leastSquares(rows, values.map(v => v.im));
   if (!re || !im) return null;
   const misfit = Math.max(...rows.map((r, j) => modulus({ re: values[j].re - dot(r, re), im: values[j].im - dot(r, im) })));
-  const largest = Math.max(...values.map(modulus));
-  if (misfit > MISFIT * largest + 3 * sample.shift) return null;
-  const error = misfit + sample.shift;
-  const kept = basis.flatMap((t, j) => (Math.hypot(re[j], im[j]) > Math.max(4 * error, 1e-6 * largest) ? [{ t, c: clean({ re: re[j], im: im[j] }, error) }] : []));
-  const scaled = symmetrised(kept.map(({ t, c }) => ({ ...t, c: divideBy(c, unit ** (t.a + t.b) * energyUnit ** t.e) })), error);
-  return groupIntoForms(scaled).map(f => {
-    const t = f.form.terms[0];
-    return { form: f.form, coefficient: f.coefficient, ...sample.growth, uncertainty: error / (unit ** (t.a + t.b) * energyUnit ** t.e) };
+  const error = Math.max(...group.map(s => s.error));
+  if (misfit > MISFIT * Math.max(...values.map(modulus)) + 3 * error) return null;
+  return basis.map((t, at) => {
+    const a = 'power' in group[0].left ? group[0].left.power : l + t.i;
+    const b = 'power' in group[0].right ? group[0].right.power : l + t.j;
+    // Only the powers that were fitted were in units of `unit`.
+    const scale = unit ** (('power' in group[0].left ? 0 : a) + ('power' in group[0].right ? 0 : b)) * energyUnit ** t.e;
+    return { a, b, e: t.e, c: { re: re[at] / scale, im: im[at] / scale }, error: (misfit + error) / scale };
   });
 }
 
 /** Partners p^a k^b and p^b k^a made equal (or opposite) where the fit leaves them so within its error. */
-function symmetrised<T extends { a: number; b: number; e: number; c: Complex }>(terms: readonly T[], error: number): T[] {
+function symmetrised(terms: readonly LocalCoefficient[], errorOf: (t: LocalCoefficient) => number): LocalCoefficient[] {
   return terms.map(t => {
     const mirror = terms.find(u => u.a === t.b && u.b === t.a && u.e === t.e);
     if (!mirror || mirror === t) return t;
     for (const sign of [1, -1]) {
       const gap = Math.hypot(t.c.re - sign * mirror.c.re, t.c.im - sign * mirror.c.im);
-      if (gap < Math.max(20 * error, 1e-3 * modulus(t.c))) return { ...t, c: { re: (t.c.re + sign * mirror.c.re) / 2, im: (t.c.im + sign * mirror.c.im) / 2 } };
+      if (gap < Math.max(20 * errorOf(t), 1e-3 * modulus(t.c))) return { ...t, c: { re: (t.c.re + sign * mirror.c.re) / 2, im: (t.c.im + sign * mirror.c.im) / 2 } };
     }
     return t;
   });
 }
 
-/** The samples as a multiple of the kernel of one of the interactions. */
-function asKernel(setup: Setup, ladder: Ladder, sample: Samples, n: number): FittedForm[] | null {
+/** The whole as a multiple of the kernel of one of the interactions. */
+function asKernel(setup: Setup, ladder: Ladder, growth: Growth, samples: readonly PartSample[], n: number): FittedForm[] | null {
+  const pairs = ladder.energies.flatMap((E, e) =>
+    ladder.externals.flatMap((p, row) => ladder.externals.map((k, column) => ({ E, p, k, value: wholeSample(ladder, samples, e, row, column) }))),
+  );
+  const shift = Math.max(...samples.map(s => s.error * endSize(ladder, s.left) * endSize(ladder, s.right)));
   for (let i = 0; i < setup.vertices.length; i++) {
     if (setup.list.terms[n].exponents[i] === 0) continue;
-    const pairs: { value: Complex; kernel: Complex }[] = [];
-    ladder.energies.forEach((E, at) =>
-      ladder.externals.forEach((p, row) =>
-        ladder.externals.forEach((k, column) => pairs.push({ value: sample.values[at][row][column], kernel: vertexValue(setup.vertices[i], p, k, E.re) })),
-      ),
-    );
-    const norm = pairs.reduce((s, { kernel }) => s + kernel.re ** 2 + kernel.im ** 2, 0);
-    const re = pairs.reduce((s, { value, kernel }) => s + value.re * kernel.re + value.im * kernel.im, 0) / norm;
-    const im = pairs.reduce((s, { value, kernel }) => s + value.im * kernel.re - value.re * kernel.im, 0) / norm;
-    const misfit = Math.max(...pairs.map(({ value, kernel: v }) => modulus({ re: value.re - re * v.re + im * v.im, im: value.im - re * v.im - im * v.re })));
-    const largest = Math.max(...pairs.map(({ value }) => modulus(value)));
-    if (misfit > MISFIT * largest + 3 * sample.shift) continue;
-    const size = Math.sqrt(norm / pairs.length);
-    const error = (misfit + sample.shift) / size;
-    return [{ form: { text: `of ${setup.vertices[i].name}`, interaction: i }, coefficient: clean({ re, im }, error), ...sample.growth, uncertainty: error }];
+    const rows = pairs.map(({ E, p, k, value }) => ({ value, kernel: vertexValue(setup.vertices[i], p, k, E.re) }));
+    const norm = rows.reduce((s, { kernel }) => s + kernel.re ** 2 + kernel.im ** 2, 0);
+    const re = rows.reduce((s, { value, kernel }) => s + value.re * kernel.re + value.im * kernel.im, 0) / norm;
+    const im = rows.reduce((s, { value, kernel }) => s + value.im * kernel.re - value.re * kernel.im, 0) / norm;
+    const misfit = Math.max(...rows.map(({ value, kernel: v }) => modulus({ re: value.re - re * v.re + im * v.im, im: value.im - re * v.im - im * v.re })));
+    if (misfit > MISFIT * Math.max(...rows.map(({ value }) => modulus(value))) + 3 * shift) continue;
+    const error = (misfit + shift) / Math.sqrt(norm / rows.length);
+    return [{ form: { text: `of ${setup.vertices[i].name}`, interaction: i }, coefficient: clean({ re, im }, error), ...growth, uncertainty: error }];
   }
   return null;
 }
 
+function wholeSample(ladder: Ladder, samples: readonly PartSample[], e: number, row: number, column: number): Complex {
+  const weight = (end: ChainEnd, at: number) => ('power' in end ? ladder.externals[at] ** end.power : end.momentum === at ? 1 : 0);
+  return samples.reduce(
+    (sum, s) => {
+      const w = weight(s.left, row) * weight(s.right, column);
+      return { re: sum.re + w * s.values[e].re, im: sum.im + w * s.values[e].im };
+    },
+    { re: 0, im: 0 },
+  );
+}
+
 const modulus = (x: Complex): number => Math.hypot(x.re, x.im);
-const divideBy = (c: Complex, s: number): Complex => ({ re: c.re / s, im: c.im / s });
 const dot = (x: readonly number[], y: readonly number[]): number => x.reduce((s, v, j) => s + v * y[j], 0);
 const clean = (c: Complex, error: number): Complex => ({ re: Math.abs(c.re) < 2 * error ? 0 : c.re, im: Math.abs(c.im) < 2 * error ? 0 : c.im });

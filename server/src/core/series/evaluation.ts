@@ -17,20 +17,21 @@ export interface Evaluation {
   readonly scan: readonly CutoffResult[];
 }
 
-const FINE = 16;
-const COARSE = 12;
+/** Nodes a panel, and fewer for the error; contacts alone cost so little that they get more. */
+const nodesFor = (setup: Setup) => (setup.vertices.every(v => v.contact) ? { fine: 16, coarse: 12 } : { fine: 12, coarse: 9 });
 
 export function evaluateSeries(setup: Setup, points: readonly OnShellPoint[], laws: readonly StrengthLaw[], onStep: (done: number) => void): Evaluation {
   const momenta = points.map(p => p.p);
   const { cutoff } = setup.spec;
   const run = (L: number, some: readonly OnShellPoint[], nodes: number) => seriesAtCutoff(new CutoffGrid(setup, L, momenta, nodes), some, laws);
+  const { fine, coarse: fewer } = nodesFor(setup);
   const cutoffs = scanCutoffs(setup).filter(L => setup.regulator.shape.kind !== 'sharp' || L > 1.02 * points[0].p);
-  const at = run(cutoff.value, points, FINE);
-  const coarse = run(cutoff.value, points, COARSE);
+  const at = run(cutoff.value, points, fine);
+  const coarse = run(cutoff.value, points, fewer);
   const scan = cutoffs.map((L, j) => {
     onStep((j + 1) / (cutoffs.length + 1));
     const all = j >= cutoffs.length >> 1 && (setup.regulator.shape.kind !== 'sharp' || momenta.every(p => L > 1.02 * p));
-    return run(L, all ? points : points.slice(0, 1), FINE);
+    return run(L, all ? points : points.slice(0, 1), fine);
   });
   return { points, at, coarse, scan };
 }

@@ -3,7 +3,7 @@ import type { MomentumTerm } from '../model/kernel-shape';
 import type { Monomial } from '../model/spec';
 import type { Vertex } from '../model/vertex';
 import { addMultiple, DenseOperator, type Column, type GridKernels } from './dense-words';
-import type { LoopWeights } from './loop-weights';
+import type { Ending, LoopWeights } from './loop-weights';
 import { difference, type MonomialList } from './monomials';
 
 /** A vertex times a number. */
@@ -82,7 +82,7 @@ export class GridChain {
     const dressed = this.sumOfRuns(runs, rest => (rest < 0 ? this.states : this.problems.map((_, at) => this.shares[rest][at].dressed ?? [])), null);
     const ending = this.sumOfRuns(runs, rest => (rest < 0 ? null : this.problems.map((_, at) => this.shares[rest][at].ending ?? [])), this.problems);
     this.shares[n] = this.problems.map((problem, at) => {
-      const u = zeros(problem.externals.length * this.basis.length);
+      const u = zeros(problem.columns.length * this.basis.length);
       for (const { content, part } of this.contacts) if (isPart(content, exponents)) this.addContact(part, at, this.rest(exponents, content), u);
       return this.finish(n, at, emptyToNull(dressed[at]), emptyToNull(ending[at]), u);
     });
@@ -102,12 +102,39 @@ export class GridChain {
     });
   }
 
-  /** R_n(external row, external column) of a problem. */
+  /** R_n(external row, column) of a problem. */
   amplitude(n: number, at: number, row: number, column: number): Complex {
+    const sum = this.dressedAmplitude(n, at, row, column);
+    this.contactEnd(n, at, column).forEach((c, a) => {
+      const state = this.states[at][a].re[this.nodes + row];
+      sum.re += state * c.re;
+      sum.im += state * c.im;
+    });
+    return sum;
+  }
+
+  /** The powers that contacts leave of the external momenta. */
+  get powers(): readonly number[] {
+    return this.basis;
+  }
+
+  /** The powers that have columns of their own, after those of the external momenta. */
+  get endPowers(): readonly number[] {
+    return this.problems[0].columns.flatMap(c => (c.kind === 'power' ? [c.n] : []));
+  }
+
+  /** Chains with a contact on the left: coefficients of p^power, in the order of `powers`. */
+  contactEnd(n: number, at: number, column: number): Complex[] {
+    const { u } = this.shares[n][at];
+    return this.basis.map((_, a) => ({ re: u.re[column * this.basis.length + a], im: u.im[column * this.basis.length + a] }));
+  }
+
+  /** Chains with another kernel on the left, at an external row. */
+  dressedAmplitude(n: number, at: number, row: number, column: number): { re: number; im: number } {
     const point = this.nodes + row;
     const size = this.basis.length;
-    const { ending, u } = this.shares[n][at];
-    const sum = { re: ending ? ending[column].re[point] : 0, im: ending?.[column].im?.[point] ?? 0 };
+    const { ending } = this.shares[n][at];
+    const sum = { re: ending?.[column].re[point] ?? 0, im: ending?.[column].im?.[point] ?? 0 };
     const add = (functions: readonly Column[], v: Numbers) => {
       for (let a = 0; a < size; a++) {
         const [x, y] = [functions[a].re[point], functions[a].im?.[point] ?? 0];
@@ -116,7 +143,6 @@ export class GridChain {
         sum.im += x * v.im[s] + y * v.re[s];
       }
     };
-    add(this.states[at], u);
     this.forEachDressing(n, at, (share, behind) => add(share.dressed!, behind.u));
     return sum;
   }
@@ -141,7 +167,7 @@ export class GridChain {
     for (const { vertex, strength, rest } of runs) {
       const functions = functionsOf(rest);
       const values = functions ? (functions.some(f => f.length) ? this.operator.apply(vertex, functions) : null) : null;
-      const columns = values ?? (ends && rest < 0 ? ends.map((p, at) => p.externals.map(k => this.operator.column(vertex, at, k))) : null);
+      const columns = values ?? (ends && rest < 0 ? ends.map((p, at) => p.columns.map(c => this.endingColumn(vertex, at, c))) : null);
       columns?.forEach((list, at) => {
         total[at] = list.map((x, c) => scaledSum(total[at][c] ?? null, x, strength));
       });
@@ -149,17 +175,22 @@ export class GridChain {
     return total;
   }
 
+  private endingColumn(vertex: Vertex, at: number, column: Ending): Column {
+    if (column.kind === 'momentum') return this.operator.column(vertex, at, column.k);
+    return { re: new Float64Array(this.problems[at].points.length), im: null };
+  }
+
   /** u_a += strength Σ_b c_ab E^e moment_b of the rest (k^b of the external momentum where nothing is left). */
   private addContact({ terms, strength }: Contact, at: number, rest: number, u: Numbers): void {
-    const { E, externals } = this.problems[at];
+    const { E, columns } = this.problems[at];
     const size = this.basis.length;
     const moments = rest < 0 ? null : this.shares[rest][at].moments;
     for (const t of terms) {
       let c: Complex = { re: strength.re * t.re - strength.im * t.im, im: strength.re * t.im + strength.im * t.re };
       for (let j = 0; j < t.e; j++) c = { re: c.re * E.re - c.im * E.im, im: c.re * E.im + c.im * E.re };
       const [a, b] = [this.basis.indexOf(t.a), this.basis.indexOf(t.b)];
-      for (let column = 0; column < externals.length; column++) {
-        const re = moments ? moments.re[column * size + b] : externals[column] ** t.b;
+      for (let column = 0; column < columns.length; column++) {
+        const re = moments ? moments.re[column * size + b] : powerOf(columns[column], t.b);
         const im = moments ? moments.im[column * size + b] : 0;
         u.re[column * size + a] += c.re * re - c.im * im;
         u.im[column * size + a] += c.re * im + c.im * re;
@@ -170,7 +201,7 @@ export class GridChain {
   private finish(n: number, at: number, dressed: readonly Column[] | null, ending: readonly Column[] | null, u: Numbers): Share {
     const problem = this.problems[at];
     const size = this.basis.length;
-    const columns = problem.externals.length;
+    const columns = problem.columns.length;
     const dressedMoments = dressed && this.momentsOf(dressed, at);
     const moments = ending ? this.momentsOf(ending, at) : zeros(columns * size);
     const { loopMoments } = problem;
@@ -223,6 +254,12 @@ export class GridChain {
     });
     return result;
   }
+}
+
+/** k^b of the external momentum, as a contact meets it. */
+function powerOf(column: Ending, b: number): number {
+  if (column.kind === 'power') return column.n === b ? 1 : 0;
+  return column.contacts ? column.k ** b : 0;
 }
 
 const isPart = (inner: Monomial, outer: Monomial): boolean => inner.every((m, i) => m <= outer[i]);

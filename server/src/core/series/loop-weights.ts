@@ -9,8 +9,10 @@ import type { Regulator } from '../model/regulator';
  */
 export interface LoopWeights {
   readonly E: Complex;
-  /** Momenta of the amplitude's rows and columns: the on-shell ones first, then whatever else was asked for. */
+  /** Momenta of the amplitude's rows: the on-shell ones first, then whatever else was asked for. */
   readonly externals: readonly number[];
+  /** What stands on the right of the amplitude. */
+  readonly columns: readonly Ending[];
   /** Nodes, then externals. */
   readonly points: Float64Array;
   /** One weight for each node and each on-shell momentum. */
@@ -21,7 +23,16 @@ export interface LoopWeights {
   readonly density: readonly number[];
 }
 
-/** `onShell`: take the poles at this real E; `others`: further external momenta; `highest`: how many loop moments. */
+/**
+ * The right end of a chain: an external momentum; or, where the parts are wanted one by one, the power k^n that a contact leaves of it, and a
+ * momentum on which only other kernels end.
+ */
+export type Ending = { readonly kind: 'momentum'; readonly k: number; readonly contacts: boolean } | { readonly kind: 'power'; readonly n: number };
+
+/**
+ * `onShell`: take the poles at this real E; `others`: further external momenta; `highest`: how many loop moments; `separate`: powers of
+ * momentum on which contacts end, each as a column of its own after those of the external momenta.
+ */
 export function loopWeights(
   kinematics: Kinematics,
   regulator: Regulator,
@@ -30,6 +41,7 @@ export function loopWeights(
   onShell: boolean,
   others: readonly number[],
   highest: number,
+  separate: readonly number[] = [],
 ): LoopWeights {
   const roots = onShell ? kinematics.roots(E.re).filter(root => root.p > grid.low && root.p < grid.high) : [];
   const n = grid.nodes.length;
@@ -55,7 +67,9 @@ export function loopWeights(
   points.set(grid.nodes);
   points.set(externals, n);
   const g = { re, im: im.length ? im : new Float64Array(re.length) };
-  return { E, externals, points, g, loopMoments: momentsOf(g, points, highest), density };
+  const columns: Ending[] = externals.map(k => ({ kind: 'momentum', k, contacts: separate.length === 0 }));
+  separate.forEach(n => columns.push({ kind: 'power', n }));
+  return { E, externals, columns, points, g, loopMoments: momentsOf(g, points, highest), density };
 }
 
 function momentsOf(g: LoopWeights['g'], points: Float64Array, highest: number): LoopWeights['loopMoments'] {
