@@ -23,7 +23,7 @@ export const obstacle =
 export function packExtension(): string {
   mkdirSync(output, { recursive: true });
   const vsix = join(output, 'tare.vsix');
-  const arguments_ = ['package', '--no-dependencies', '--allow-missing-repository', '--out', vsix];
+  const arguments_ = ['package', '--no-dependencies', '--allow-missing-repository', '--no-rewrite-relative-links', '--out', vsix];
   execFileSync(process.execPath, [join(root, 'node_modules/@vscode/vsce/vsce'), ...arguments_], { cwd: root, stdio: 'pipe' });
   return vsix;
 }

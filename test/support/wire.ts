@@ -73,8 +73,8 @@ export function termOf(monomial: string, exponents: readonly number[], more: Par
   const value = {
     p: 0.05,
     E: 0.00125,
-    bare: complex(c0 ** exponents[0]!, -0.01),
-    renormalised: complex(c0 ** exponents[0]!, -0.01),
+    bare: complex(c0 ** exponents[0], -0.01),
+    renormalised: complex(c0 ** exponents[0], -0.01),
     uncertainty: 1e-9,
   };
   return {
@@ -206,7 +206,7 @@ function placesIn(text: string): ModelInText['places'] {
   const statements = (keyword: string): NamedPlace[] =>
     [...text.matchAll(new RegExp(`\\b${keyword} +(\\S+?)(?=[ (])[^#\\r\\n]*`, 'g'))].map(match => ({
       statement: span(match.index, match[0].trimEnd().length),
-      name: span(match.index + match[0].indexOf(match[1]!, keyword.length), match[1]!.length),
+      name: span(match.index + match[0].indexOf(match[1], keyword.length), match[1].length),
     }));
   const series = text.indexOf('series');
   const name = text.indexOf('defect_in_a_wire');
@@ -221,7 +221,7 @@ function placesIn(text: string): ModelInText['places'] {
     series: { statement: span(series, /^[^#\r\n]*/.exec(text.slice(series))![0].trimEnd().length), keyword: span(series, 6) },
     expectations: [...text.matchAll(/\bexpect +([^#\r\n]*)/g)].map(match => ({
       statement: span(match.index, match[0].trimEnd().length),
-      text: match[1]!.trimEnd(),
+      text: match[1].trimEnd(),
     })),
   };
 }

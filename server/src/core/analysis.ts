@@ -5,9 +5,7 @@ import { bindingEnergies, convergenceAt, fullAmplitude, potentialParts } from '.
 import { lowEnergy } from './scattering/low-energy';
 import { CutoffGrid, type OnShellPoint } from './series/amplitudes';
 import { cost } from './series/cost';
-import {
-  byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation,
-} from './series/evaluation';
+import { byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation } from './series/evaluation';
 import { onShellPoints } from './series/points';
 import { setUp, type Setup } from './series/setup';
 import { cancelledBy, declaredContacts, renormalisedConverges, statuses } from './series/statuses';
@@ -65,8 +63,13 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   const ultraviolet = fullUltraviolet(setup, symbolic, stop);
   stop();
   const laws = [...(declared.scheme?.strengths ?? []), ...ultraviolet.strengths];
-  const dense = setup.counterterms.length && symbolic.terms.some((t, n) => !t.contact || !declared.scheme?.growth[n]) ? renormalisedConverges(setup, laws, stop) : null;
-  const terms = ultraviolet.terms.map((t): Ultraviolet => (t.confirmed || t.verdict === 'undecided' ? t : { ...t, verdict: 'undecided', power: null, log: null }));
+  const dense =
+    setup.counterterms.length && symbolic.terms.some((t, n) => !t.contact || !declared.scheme?.growth[n])
+      ? renormalisedConverges(setup, laws, stop)
+      : null;
+  const terms = ultraviolet.terms.map((t): Ultraviolet =>
+    t.confirmed || t.verdict === 'undecided' ? t : { ...t, verdict: 'undecided', power: null, log: null },
+  );
   const status = statuses(setup, symbolic, terms, declared, dense);
   options.progress?.(0.3, 'amplitudes');
   const points = asked.points;
@@ -118,16 +121,35 @@ function termResult(
   infrared: TermResult['infrared']['verdict'],
 ): TermResult {
   const { name, exponents, order } = setup.list.terms[n];
-  return { monomial: name, exponents, order, ultraviolet, infrared: { verdict: infrared }, status, cancelledBy: status === 'cancelled' ? cancelledBy(setup, n) : [], values };
+  return {
+    monomial: name,
+    exponents,
+    order,
+    ultraviolet,
+    infrared: { verdict: infrared },
+    status,
+    cancelledBy: status === 'cancelled' ? cancelledBy(setup, n) : [],
+    values,
+  };
 }
 
 function scanOf(evaluation: Evaluation, n: number): TermResult['scan'] | null {
   const usable = evaluation.scan.filter(s => Number.isFinite(s.bare[0][n].forward.re) && Number.isFinite(s.renormalised[0][n].forward.re));
   if (!usable.length) return null;
-  return { p: evaluation.points[0].p, cutoff: usable.map(s => s.cutoff), bare: usable.map(s => s.bare[0][n].forward), renormalised: usable.map(s => s.renormalised[0][n].forward) };
+  return {
+    p: evaluation.points[0].p,
+    cutoff: usable.map(s => s.cutoff),
+    bare: usable.map(s => s.bare[0][n].forward),
+    renormalised: usable.map(s => s.renormalised[0][n].forward),
+  };
 }
 
-function sums(setup: Setup, evaluation: Evaluation, points: readonly OnShellPoint[], full: ReturnType<typeof solve>['full'] | null): SumResult[] {
+function sums(
+  setup: Setup,
+  evaluation: Evaluation,
+  points: readonly OnShellPoint[],
+  full: ReturnType<typeof solve>['full'] | null,
+): SumResult[] {
   return points.flatMap((point, j): SumResult[] => {
     const { orders, values } = byOrder(setup, evaluation.at.renormalised[j]);
     if (values.some(v => !Number.isFinite(v.re) || !Number.isFinite(v.im))) return [];
@@ -179,7 +201,7 @@ function observablesOf(grid: CutoffGrid, parts: ReturnType<typeof potentialParts
   const range = low && low.effectiveRange !== null && Number.isFinite(low.effectiveRange) && Number.isFinite(low.effectiveRangeError);
   return {
     ...(finite ? { scattering_length: low.scatteringLength } : {}),
-    ...(range ? { effective_range: low.effectiveRange! } : {}),
+    ...(range ? { effective_range: low.effectiveRange } : {}),
     ...(bound ? { binding_energies: bound } : {}),
     definition: low?.definition ?? 'binding energies from the threshold',
     uncertainties: {

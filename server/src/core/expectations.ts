@@ -22,12 +22,24 @@ export function judge(expectations: readonly ExpectationSpec[], evidence: Eviden
       case 'converges': {
         const found = evidence.convergenceAt(e.point);
         const size = found?.largestEigenvalue ? Math.hypot(found.largestEigenvalue.re, found.largestEigenvalue.im) : null;
-        return { text: '', holds: found?.converges ?? null, measured: size === null ? 'not evaluated' : `largest eigenvalue ${size.toPrecision(4)}`, ...(size === null ? {} : { value: size, wanted: 1 }) };
+        return {
+          text: '',
+          holds: found?.converges ?? null,
+          measured: size === null ? 'not evaluated' : `largest eigenvalue ${size.toPrecision(4)}`,
+          ...(size === null ? {} : { value: size, wanted: 1 }),
+        };
       }
       case 'drift': {
         const drift = evidence.driftAt(e.point);
-        if (drift === null) return { text: '', holds: null, measured: 'no scan of the cutoff to tell by: write `scan A .. B` after its shape' };
-        return { text: '', holds: drift * 100 < e.percent, measured: `${(drift * 100).toPrecision(3)} %`, value: drift * 100, wanted: e.percent };
+        if (drift === null)
+          return { text: '', holds: null, measured: 'no scan of the cutoff to tell by: write `scan A .. B` after its shape' };
+        return {
+          text: '',
+          holds: drift * 100 < e.percent,
+          measured: `${(drift * 100).toPrecision(3)} %`,
+          value: drift * 100,
+          wanted: e.percent,
+        };
       }
       case 'observable':
         return observable(e, evidence);
@@ -49,7 +61,14 @@ function observable(e: Extract<ExpectationSpec, { kind: 'observable' }>, evidenc
   const compare = (value: number | null | undefined): ExpectationResult =>
     value === null || value === undefined || !Number.isFinite(value)
       ? { text: '', holds: null, measured: 'not evaluated in this dimension and wave' }
-      : { text: '', holds: Math.abs(value - e.value) <= e.tolerance, measured: value.toPrecision(6), value, wanted: e.value, tolerance: e.tolerance };
+      : {
+          text: '',
+          holds: Math.abs(value - e.value) <= e.tolerance,
+          measured: value.toPrecision(6),
+          value,
+          wanted: e.value,
+          tolerance: e.tolerance,
+        };
   switch (e.observable) {
     case 'scattering_length':
       return compare(observables?.scattering_length);

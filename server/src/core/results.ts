@@ -30,7 +30,12 @@ export interface TermResult {
   readonly status: 'finite' | 'cancelled' | 'uncancelled' | null;
   readonly cancelledBy: readonly string[];
   readonly values: readonly ValueResult[];
-  readonly scan?: { readonly p: number; readonly cutoff: readonly number[]; readonly bare: readonly Complex[]; readonly renormalised: readonly Complex[] };
+  readonly scan?: {
+    readonly p: number;
+    readonly cutoff: readonly number[];
+    readonly bare: readonly Complex[];
+    readonly renormalised: readonly Complex[];
+  };
 }
 
 export interface Ultraviolet {

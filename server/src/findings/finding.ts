@@ -3,9 +3,26 @@ import type { Span } from '../language/document';
 export type Severity = 'error' | 'warning' | 'information' | 'hint';
 
 export type FindingCode =
-  | 'syntax' | 'unknown-name' | 'dimension' | 'not-hermitian' | 'duplicate' | 'missing' | 'value' | 'file' | 'not-evaluated'
-  | 'uv-divergence' | 'nonlocal-divergence' | 'cutoff-too-soft' | 'uv-nested' | 'infrared-divergence' | 'expectation'
-  | 'undecided' | 'budget' | 'series-diverges' | 'cutoff-dependence' | 'reading';
+  | 'syntax'
+  | 'unknown-name'
+  | 'dimension'
+  | 'not-hermitian'
+  | 'duplicate'
+  | 'missing'
+  | 'value'
+  | 'file'
+  | 'not-evaluated'
+  | 'uv-divergence'
+  | 'nonlocal-divergence'
+  | 'cutoff-too-soft'
+  | 'uv-nested'
+  | 'infrared-divergence'
+  | 'expectation'
+  | 'undecided'
+  | 'budget'
+  | 'series-diverges'
+  | 'cutoff-dependence'
+  | 'reading';
 
 /** A change of the text that a person can accept. */
 export interface QuickFix {

@@ -64,11 +64,12 @@ export function serve(connection: Connection, places: ServerPlaces): void {
   const pullSettings = (): Promise<void> => logging(async () => configure(await connection.workspace.getConfiguration('tare')));
 
   connection.onInitialize(({ capabilities, initializationOptions }: InitializeParams): InitializeResult => {
-    client.images = initializationOptions?.images === true;
+    const wishes = initializationOptions as { images?: unknown; settings?: unknown } | undefined;
+    client.images = wishes?.images === true;
     client.pullsSettings = capabilities.workspace?.configuration === true;
     client.watchesSettings = capabilities.workspace?.didChangeConfiguration?.dynamicRegistration === true;
     client.showsProgress = capabilities.window?.workDoneProgress === true;
-    if (initializationOptions?.settings !== undefined) configure(initializationOptions.settings);
+    if (wishes?.settings !== undefined) configure(wishes.settings);
     return {
       serverInfo: { name: 'tare', version },
       capabilities: {
@@ -84,7 +85,9 @@ export function serve(connection: Connection, places: ServerPlaces): void {
       await logging(() => connection.client.register(DidChangeConfigurationNotification.type, { section: 'tare' }));
     if (client.pullsSettings) await pullSettings();
   });
-  connection.onDidChangeConfiguration(({ settings }) => (client.pullsSettings ? pullSettings() : configure(settings?.tare)));
+  connection.onDidChangeConfiguration(({ settings }) =>
+    client.pullsSettings ? pullSettings() : configure((settings as { tare?: unknown } | null)?.tare),
+  );
 
   documents.onDidChangeContent(({ document }) => scheduler.update(document.uri, document.version, document.getText()));
   documents.onDidClose(({ document }) => {

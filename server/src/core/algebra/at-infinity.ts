@@ -41,7 +41,8 @@ function normal(terms: readonly AsymptoticTerm[], truncated: number): Asymptotic
   return { terms: kept.map(t => ({ power: t.power, log: t.log, c: { re: t.re, im: t.im } })), truncated };
 }
 
-const constant = (c: Complex): Asymptotics => (c.re === 0 && c.im === 0 ? ZERO : { terms: [{ power: 0, log: 0, c }], truncated: -Infinity });
+const constant = (c: Complex): Asymptotics =>
+  c.re === 0 && c.im === 0 ? ZERO : { terms: [{ power: 0, log: 0, c }], truncated: -Infinity };
 const isZero = (f: Asymptotics): boolean => f.terms.length === 0 && f.truncated === -Infinity;
 const leadingPower = (f: Asymptotics): number => (f.terms.length ? f.terms[0].power : f.truncated);
 
@@ -97,14 +98,21 @@ function power(f: Asymptotics, r: number, depth: number): Asymptotics {
   const { leading, u } = split(f);
   let binomial = 1;
   const coefficients: number[] = [1];
-  const series = taylor(u, j => {
-    while (coefficients.length <= j) {
-      binomial *= (r - coefficients.length + 1) / coefficients.length;
-      coefficients.push(binomial);
-    }
-    return { re: coefficients[j], im: 0 };
-  }, depth);
-  return multiply(series, { terms: [{ power: leading.power * r, log: 0, c: complexPower(leading.c, { re: r, im: 0 }) }], truncated: -Infinity });
+  const series = taylor(
+    u,
+    j => {
+      while (coefficients.length <= j) {
+        binomial *= (r - coefficients.length + 1) / coefficients.length;
+        coefficients.push(binomial);
+      }
+      return { re: coefficients[j], im: 0 };
+    },
+    depth,
+  );
+  return multiply(series, {
+    terms: [{ power: leading.power * r, log: 0, c: complexPower(leading.c, { re: r, im: 0 }) }],
+    truncated: -Infinity,
+  });
 }
 
 function exponential(f: Asymptotics, depth: number): Asymptotics {
@@ -122,10 +130,14 @@ function exponential(f: Asymptotics, depth: number): Asymptotics {
   const u: Asymptotics = { terms: f.terms.filter(t => t.power < 0), truncated: f.truncated };
   let factorial = 1;
   const inverse: number[] = [1];
-  const series = taylor(u, j => {
-    while (inverse.length <= j) inverse.push(1 / (factorial *= inverse.length));
-    return { re: inverse[j], im: 0 };
-  }, depth);
+  const series = taylor(
+    u,
+    j => {
+      while (inverse.length <= j) inverse.push(1 / (factorial *= inverse.length));
+      return { re: inverse[j], im: 0 };
+    },
+    depth,
+  );
   return multiply(constant(complexFunction('exp', at)), series);
 }
 
@@ -177,7 +189,8 @@ export function atInfinity(expr: Expr, symbols: ReadonlyMap<string, Asymptotics>
       const exponent = recurse(expr.right);
       const fixed = exponent.terms.length === 0 ? 0 : exponent.terms[0];
       if (fixed === 0) return constant({ re: 1, im: 0 });
-      if (exponent.terms.length === 1 && fixed.power === 0 && fixed.log === 0 && fixed.c.im === 0) return power(recurse(expr.left), fixed.c.re, depth);
+      if (exponent.terms.length === 1 && fixed.power === 0 && fixed.log === 0 && fixed.c.im === 0)
+        return power(recurse(expr.left), fixed.c.re, depth);
       return exponential(multiply(exponent, logarithm(recurse(expr.left), depth)), depth);
     }
     case 'call':

@@ -18,8 +18,16 @@ interface Pair {
 type Node = (bindings: Bindings, count: number) => Pair;
 
 const ELEMENTARY: Partial<Record<FunctionName, (x: number) => number>> = {
-  exp: Math.exp, sin: Math.sin, cos: Math.cos, tan: Math.tan, atan: Math.atan, sinh: Math.sinh, cosh: Math.cosh, tanh: Math.tanh,
-  abs: Math.abs, step: x => (x > 0 ? 1 : x < 0 ? 0 : 0.5),
+  exp: Math.exp,
+  sin: Math.sin,
+  cos: Math.cos,
+  tan: Math.tan,
+  atan: Math.atan,
+  sinh: Math.sinh,
+  cosh: Math.cosh,
+  tanh: Math.tanh,
+  abs: Math.abs,
+  step: x => (x > 0 ? 1 : x < 0 ? 0 : 0.5),
 };
 
 /** Functions that leave the real axis outside of these intervals, where the complex branch takes over. */
@@ -62,7 +70,11 @@ function build(expr: Expr, lent: LentFunctions): Node {
       };
     }
     case 'call':
-      return buildCall(expr.name, expr.arguments.map(a => build(a, lent)), lent);
+      return buildCall(
+        expr.name,
+        expr.arguments.map(a => build(a, lent)),
+        lent,
+      );
     case 'power':
       return buildPower(build(expr.left, lent), expr.right, lent);
     default:
@@ -93,7 +105,8 @@ function buildArithmetic(kind: 'add' | 'subtract' | 'multiply' | 'divide', left:
 }
 
 function buildPower(base: Node, exponent: Expr, lent: LentFunctions): Node {
-  const whole = exponent.kind === 'number' && exponent.im === 0 && Number.isInteger(exponent.re) && Math.abs(exponent.re) <= 64 ? exponent.re : null;
+  const whole =
+    exponent.kind === 'number' && exponent.im === 0 && Number.isInteger(exponent.re) && Math.abs(exponent.re) <= 64 ? exponent.re : null;
   const power = build(exponent, lent);
   return (b, n) => {
     const x = base(b, n);

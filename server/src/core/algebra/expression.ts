@@ -12,8 +12,27 @@ export type Expr =
 
 /** The functions of the language. All take one argument but the last four, which take (order, argument). */
 export type FunctionName =
-  | 'sqrt' | 'exp' | 'log' | 'sin' | 'cos' | 'tan' | 'asin' | 'acos' | 'atan' | 'sinh' | 'cosh' | 'tanh'
-  | 'erf' | 'abs' | 'step' | 'gamma' | 'delta' | 'besselj' | 'sphericalj' | 'legendrep' | 'legendreq';
+  | 'sqrt'
+  | 'exp'
+  | 'log'
+  | 'sin'
+  | 'cos'
+  | 'tan'
+  | 'asin'
+  | 'acos'
+  | 'atan'
+  | 'sinh'
+  | 'cosh'
+  | 'tanh'
+  | 'erf'
+  | 'abs'
+  | 'step'
+  | 'gamma'
+  | 'delta'
+  | 'besselj'
+  | 'sphericalj'
+  | 'legendrep'
+  | 'legendreq';
 
 export interface Complex {
   readonly re: number;
@@ -23,7 +42,11 @@ export interface Complex {
 export const number = (re: number, im = 0): Expr => ({ kind: 'number', re, im });
 export const symbol = (name: string): Expr => ({ kind: 'symbol', name });
 export const negate = (argument: Expr): Expr => ({ kind: 'negate', argument });
-export const binary = (kind: 'add' | 'subtract' | 'multiply' | 'divide' | 'power', left: Expr, right: Expr): Expr => ({ kind, left, right });
+export const binary = (kind: 'add' | 'subtract' | 'multiply' | 'divide' | 'power', left: Expr, right: Expr): Expr => ({
+  kind,
+  left,
+  right,
+});
 export const call = (name: FunctionName, args: readonly Expr[], primes = 0): Expr => ({ kind: 'call', name, primes, arguments: args });
 
 /** The names that occur free in `expr`. */
@@ -54,7 +77,11 @@ export function substitute(expr: Expr, values: ReadonlyMap<string, Expr>): Expr 
     case 'negate':
       return negate(substitute(expr.argument, values));
     case 'call':
-      return call(expr.name, expr.arguments.map(a => substitute(a, values)), expr.primes);
+      return call(
+        expr.name,
+        expr.arguments.map(a => substitute(a, values)),
+        expr.primes,
+      );
     default:
       return binary(expr.kind, substitute(expr.left, values), substitute(expr.right, values));
   }

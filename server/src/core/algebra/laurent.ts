@@ -74,7 +74,8 @@ export class LaurentRing {
       for (let t = 0; t < y.slots.length; t++) {
         const slot = y.slots[t] + xPower * width + xLog;
         if (slot < 0 || (xPower < 0 && Math.floor(y.slots[t] / width) + xPower < 0)) continue;
-        if ((y.slots[t] % width) + xLog >= width || slot >= this.re.length) throw new RangeError('a Laurent polynomial has outgrown its ring');
+        if ((y.slots[t] % width) + xLog >= width || slot >= this.re.length)
+          throw new RangeError('a Laurent polynomial has outgrown its ring');
         const a = x.re[s] * y.re[t] - x.im[s] * y.im[t];
         const b = x.re[s] * y.im[t] + x.im[s] * y.re[t];
         this.re[slot] += a;
@@ -92,7 +93,12 @@ export class LaurentRing {
   }
 
   terms(x: Laurent): LaurentTerm[] {
-    return Array.from(x.slots, (slot, s) => ({ power: Math.floor(slot / this.width) + this.lowest, log: slot % this.width, re: x.re[s], im: x.im[s] }));
+    return Array.from(x.slots, (slot, s) => ({
+      power: Math.floor(slot / this.width) + this.lowest,
+      log: slot % this.width,
+      re: x.re[s],
+      im: x.im[s],
+    }));
   }
 
   of(terms: readonly LaurentTerm[]): Laurent {
@@ -123,4 +129,5 @@ export function shiftLogs(terms: readonly LaurentTerm[], shift: number): Laurent
 }
 
 /** Does (power, log) grow faster than (power2, log2)? */
-export const growsFaster = (power: number, log: number, power2: number, log2: number): boolean => power > power2 || (power === power2 && log > log2);
+export const growsFaster = (power: number, log: number, power2: number, log2: number): boolean =>
+  power > power2 || (power === power2 && log > log2);

@@ -20,7 +20,14 @@ export function applyKernel(kernel: KernelOnGrid, x: readonly Vector[], out: rea
 }
 
 /** Four vectors at a time, so that each matrix element is read once for four products. */
-function multiply(matrix: Float64Array, size: number, x: readonly Float64Array[], out: readonly Float64Array[], sign: number, add: boolean): void {
+function multiply(
+  matrix: Float64Array,
+  size: number,
+  x: readonly Float64Array[],
+  out: readonly Float64Array[],
+  sign: number,
+  add: boolean,
+): void {
   let c = 0;
   for (; c + 3 < x.length; c += 4) {
     const [x0, x1, x2, x3] = [x[c], x[c + 1], x[c + 2], x[c + 3]];

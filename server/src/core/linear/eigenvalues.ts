@@ -8,7 +8,12 @@ export type Operator = (x: { re: Float64Array; im: Float64Array }, y: { re: Floa
  * Eigenvalues of largest modulus of an operator on n points, by Arnoldi's method with full orthogonalisation: `steps` products. Those are
  * returned whose residual is below `tolerance` of the largest, by falling modulus; the largest always is, with its residual.
  */
-export function largestEigenvalues(operator: Operator, n: number, steps: number, tolerance: number): { values: Complex[]; residual: number } {
+export function largestEigenvalues(
+  operator: Operator,
+  n: number,
+  steps: number,
+  tolerance: number,
+): { values: Complex[]; residual: number } {
   const m = Math.min(steps, n);
   const basis = [startVector(n)];
   const h: Complex[][] = Array.from({ length: m + 1 }, () => Array.from({ length: m }, () => ({ re: 0, im: 0 })));
@@ -78,7 +83,10 @@ function lastComponent(matrix: readonly (readonly Complex[])[], value: Complex):
   const shift = 1e-10 * (modulus(value) || 1);
   let x: Complex[] = Array.from({ length: n }, (_, j) => ({ re: 1, im: 0.1 * j }));
   for (let round = 0; round < 3; round++) {
-    x = solveDense(matrix.map((row, i) => row.map((c, j) => (i === j ? { re: c.re - value.re - shift, im: c.im - value.im } : c))), x);
+    x = solveDense(
+      matrix.map((row, i) => row.map((c, j) => (i === j ? { re: c.re - value.re - shift, im: c.im - value.im } : c))),
+      x,
+    );
     const length = Math.hypot(...x.flatMap(c => [c.re, c.im]));
     x = x.map(c => ({ re: c.re / length, im: c.im / length }));
   }

@@ -115,7 +115,16 @@ export function solve({ n, re, im, pivots }: Factored, x: Float64Array, y: Float
 }
 
 /** x[r] -= Σ_{from<=j<to} A[r][j] x[j]. */
-function eliminate(re: Float64Array, im: Float64Array | null, n: number, r: number, from: number, to: number, x: Float64Array, y: Float64Array | null): void {
+function eliminate(
+  re: Float64Array,
+  im: Float64Array | null,
+  n: number,
+  r: number,
+  from: number,
+  to: number,
+  x: Float64Array,
+  y: Float64Array | null,
+): void {
   let s = 0;
   let t = 0;
   for (let j = from; j < to; j++) s += re[r * n + j] * x[j];

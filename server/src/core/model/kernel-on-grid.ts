@@ -22,7 +22,13 @@ export function kernelOnGrid(element: MatrixElement, grid: MomentumGrid, scale: 
 }
 
 /** The rows of `KernelOnGrid` for any momenta p: re[row * nodes + column]. */
-export function kernelRows(element: MatrixElement, grid: MomentumGrid, p: Float64Array, scale: number, E: number): { re: Float64Array; im: Float64Array } {
+export function kernelRows(
+  element: MatrixElement,
+  grid: MomentumGrid,
+  p: Float64Array,
+  scale: number,
+  E: number,
+): { re: Float64Array; im: Float64Array } {
   const n = grid.nodes.length;
   const re = new Float64Array(p.length * n);
   const im = new Float64Array(p.length * n);
@@ -54,7 +60,15 @@ interface SubRule {
 const POINTS = 10;
 const DEEPEST = 32;
 
-function correctRow(element: MatrixElement, grid: MomentumGrid, p: number, scale: number, E: number, re: Float64Array, im: Float64Array): void {
+function correctRow(
+  element: MatrixElement,
+  grid: MomentumGrid,
+  p: number,
+  scale: number,
+  E: number,
+  re: Float64Array,
+  im: Float64Array,
+): void {
   for (const panel of grid.panels) {
     const half = (panel.to - panel.from) / 2;
     const middle = (panel.to + panel.from) / 2;

@@ -53,7 +53,12 @@ function quadraticMotion(mu: number, signed: boolean): Motion {
     roots: E => {
       if (!(E > 0)) return [];
       const p = Math.sqrt(2 * mu * E);
-      return signed ? [{ p: -p, slope: -p / mu }, { p, slope: p / mu }] : [{ p, slope: p / mu }];
+      return signed
+        ? [
+            { p: -p, slope: -p / mu },
+            { p, slope: p / mu },
+          ]
+        : [{ p, slope: p / mu }];
     },
     threshold: 0,
     purePower: { coefficient: 1 / (2 * mu), exponent: 2 },
@@ -80,7 +85,11 @@ function generalMotion(kinetic: Expr, signed: boolean): Motion {
   const ladder = signed ? [...LADDER.map(k => -k).reverse(), 0, ...LADDER] : [0, ...LADDER];
   const values = energies(Float64Array.from(ladder));
   const expansion = (sign: 1 | -1, depth: number) => {
-    const series = atInfinity(kinetic, new Map([['k', { terms: [{ power: 1, log: 0, c: { re: sign, im: 0 } }], truncated: -Infinity }]]), depth);
+    const series = atInfinity(
+      kinetic,
+      new Map([['k', { terms: [{ power: 1, log: 0, c: { re: sign, im: 0 } }], truncated: -Infinity }]]),
+      depth,
+    );
     if (series.terms.some(t => t.log !== 0 || t.c.im !== 0)) throw new NoExpansion('the kinetic energy is not a series in powers of k');
     return series.terms.map(t => ({ power: t.power, c: t.c.re }));
   };
@@ -115,7 +124,8 @@ function rootsBetween(ladder: readonly number[], values: Float64Array, energy: (
 function thresholdOf(values: Float64Array): number {
   let least = 0;
   for (let j = 1; j < values.length; j++) if (values[j] < values[least]) least = j;
-  const fallsForever = (least === 0 && values[1] > values[0] && values[0] < -1e3 * Math.abs(values[values.length >> 1] || 1)) || least === values.length - 1;
+  const fallsForever =
+    (least === 0 && values[1] > values[0] && values[0] < -1e3 * Math.abs(values[values.length >> 1] || 1)) || least === values.length - 1;
   return fallsForever ? -Infinity : values[least];
 }
 

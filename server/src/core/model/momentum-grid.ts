@@ -42,12 +42,26 @@ export interface GridWishes {
 export function momentumGrid(kinematics: Kinematics, regulator: Regulator, cutoff: number, wishes: GridWishes): MomentumGrid {
   const high = cutoff * regulator.reach(wishes.growth);
   const breaks = breakpoints(high, regulator.shape.kind === 'sharp', wishes);
-  const all = kinematics.signed ? [...breaks.slice(1).map(b => -b).reverse(), ...breaks] : breaks;
+  const all = kinematics.signed
+    ? [
+        ...breaks
+          .slice(1)
+          .map(b => -b)
+          .reverse(),
+        ...breaks,
+      ]
+    : breaks;
   return gridOn(kinematics, regulator, cutoff, all, wishes.pointsPerPanel);
 }
 
 /** The grid with these panels, `points` nodes in each. */
-export function gridOn(kinematics: Kinematics, regulator: Regulator, cutoff: number, breaks: readonly number[], points: number): MomentumGrid {
+export function gridOn(
+  kinematics: Kinematics,
+  regulator: Regulator,
+  cutoff: number,
+  breaks: readonly number[],
+  points: number,
+): MomentumGrid {
   const count = (breaks.length - 1) * points;
   const nodes = new Float64Array(count);
   const weights = new Float64Array(count);

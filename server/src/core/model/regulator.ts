@@ -21,7 +21,15 @@ export interface Regulator {
 export function regulatorOf(shape: CutoffShape): Regulator {
   switch (shape.kind) {
     case 'sharp':
-      return { shape, leg: () => 1, reach: () => 1, taylor: j => (j === 0 ? 1 : 0), step: Infinity, mellin: s => (s === 0 ? 0 : 1 / s), strength: Infinity };
+      return {
+        shape,
+        leg: () => 1,
+        reach: () => 1,
+        taylor: j => (j === 0 ? 1 : 0),
+        step: Infinity,
+        mellin: s => (s === 0 ? 0 : 1 / s),
+        strength: Infinity,
+      };
     case 'gaussian': {
       const n2 = 2 * shape.n;
       return {

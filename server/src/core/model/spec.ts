@@ -73,14 +73,18 @@ export interface CountertermSpec {
   /** A form of its own, or the kernel of the interaction `of`. */
   readonly form: { readonly arguments: 'pk' | 'pkE'; readonly expr: Expr } | { readonly of: string };
   readonly cancels: readonly Monomial[];
-  readonly scheme:
-    | { readonly kind: 'minimal'; readonly at: number }
-    | { readonly kind: 'p' | 'kappa'; readonly at: number };
+  readonly scheme: { readonly kind: 'minimal'; readonly at: number } | { readonly kind: 'p' | 'kappa'; readonly at: number };
 }
 
 export type Observable =
-  | 'scattering_length' | 'effective_range' | 'binding_energy' | 'phase_shift' | 'amplitude'
-  | 'transmission' | 'reflection' | 'cross_section';
+  | 'scattering_length'
+  | 'effective_range'
+  | 'binding_energy'
+  | 'phase_shift'
+  | 'amplitude'
+  | 'transmission'
+  | 'reflection'
+  | 'cross_section';
 
 export type ExpectationSpec =
   | { readonly kind: 'finite'; readonly to: number | null }

@@ -27,7 +27,7 @@ export function contactTerms(shape: KernelShape): readonly MomentumTerm[] | null
   if (shape.kind === 'polynomial') return shape.terms;
   if (shape.kind !== 'sum') return null;
   const parts = shape.parts.map(contactTerms);
-  return parts.every(part => part !== null) ? parts.flatMap(part => part!) : null;
+  return parts.every(part => part !== null) ? parts.flatMap(part => part) : null;
 }
 
 /** Every local part of a kernel. */
@@ -38,9 +38,13 @@ export function localParts(shape: KernelShape): readonly LocalShape[] {
 
 function ridgeOf(shape: KernelShape): number {
   if (shape.kind === 'sum') return Math.min(...shape.parts.map(ridgeOf));
-  if (shape.kind === 'local') return shape.scale;
+  if (shape.kind === 'local') return isShiftedContact(shape) ? Infinity : shape.scale;
   return shape.kind === 'general' && dependsOnDifference(shape.expr) ? 0 : Infinity;
 }
+
+/** A contact away from the origin: it oscillates along both momenta, but has no ridge. */
+const isShiftedContact = (shape: LocalShape): boolean =>
+  shape.scale === 0 && Boolean(shape.tail?.length && shape.tail.every(t => t.phase !== 0));
 
 function energyOccurs(shape: KernelShape): boolean {
   if (shape.kind === 'sum') return shape.parts.some(energyOccurs);
@@ -61,7 +65,10 @@ function dependsOnDifference(expr: Expr): boolean {
     case 'divide':
       return dependsOnDifference(expr.left) || mixesMomenta(expr.right);
     case 'power':
-      return dependsOnDifference(expr.left) || (mixesMomenta(expr.left) && !(expr.right.kind === 'number' && Number.isInteger(expr.right.re) && expr.right.re > 0));
+      return (
+        dependsOnDifference(expr.left) ||
+        (mixesMomenta(expr.left) && !(expr.right.kind === 'number' && Number.isInteger(expr.right.re) && expr.right.re > 0))
+      );
     default:
       return dependsOnDifference(expr.left) || dependsOnDifference(expr.right);
   }

@@ -31,7 +31,7 @@ function oneMinusLoop({ size, re, im }: PotentialMatrix, { g }: LoopWeights): [F
   for (let r = 0, at = 0; r < size; r++) {
     for (let c = 0; c < size; c++, at++) {
       a[at] = (r === c ? 1 : 0) - re[at] * g.re[c];
-      if (b) b[at] = -im![at] * g.re[c];
+      if (b) b[at] = -im[at] * g.re[c];
     }
   }
   return [a, b];

@@ -26,7 +26,10 @@ export function lowEnergy(at: CutoffGrid, parts: readonly ScaledVertex[], moment
       const { tangent } = fullAmplitude(at, parts, { p, E: kinematics.energy(p) });
       return effectiveRangeFunction(spec.dimension, spec.wave, p, tangent);
     });
-    return newton(momenta.map(p => p * p), values);
+    return newton(
+      momenta.map(p => p * p),
+      values,
+    );
   };
   const [coarse, fine] = [fit(momentum), fit(momentum / 2)];
   if (spec.dimension === 2) {
@@ -35,13 +38,20 @@ export function lowEnergy(at: CutoffGrid, parts: readonly ScaledVertex[], moment
   }
   const [a, b] = [coarse, fine].map(c => -1 / c[0]);
   const [r, s] = [coarse, fine].map(c => 2 * c[1]);
-  return { definition, scatteringLength: b, scatteringLengthError: Math.abs(a - b), effectiveRange: s, effectiveRangeError: Math.abs(r - s) };
+  return {
+    definition,
+    scatteringLength: b,
+    scatteringLengthError: Math.abs(a - b),
+    effectiveRange: s,
+    effectiveRangeError: Math.abs(r - s),
+  };
 }
 
 type Wave = CutoffGrid['setup']['spec']['wave'];
 
 function definitionOf(dimension: number, wave: Wave): string | null {
-  if (dimension === 3 && wave.kind === 'angular') return wave.number === 0 ? 'p cot(delta) = -1/a + r p^2/2' : `p^${2 * wave.number + 1} cot(delta) = -1/a + r p^2/2`;
+  if (dimension === 3 && wave.kind === 'angular')
+    return wave.number === 0 ? 'p cot(delta) = -1/a + r p^2/2' : `p^${2 * wave.number + 1} cot(delta) = -1/a + r p^2/2`;
   if (dimension === 2 && wave.kind === 'angular' && wave.number === 0) return 'cot(delta) = (2/pi) (ln(p a/2) + gamma)';
   if (wave.kind === 'even') return 'p tan(delta) = 1/a - r p^2/2';
   if (wave.kind === 'odd') return 'p cot(delta) = -1/a + r p^2/2';

@@ -24,11 +24,27 @@ export function potentialMatrix(kernels: GridKernels, parts: readonly ScaledVert
   for (const { vertex, strength } of parts) {
     const inner = kernels.of(vertex, problem.E.re);
     for (let row = 0; row < nodes; row++) {
-      accumulate(inner.re.subarray(row * nodes, (row + 1) * nodes), inner.im?.subarray(row * nodes, (row + 1) * nodes) ?? null, strength, re, im, row * size, 1);
+      accumulate(
+        inner.re.subarray(row * nodes, (row + 1) * nodes),
+        inner.im?.subarray(row * nodes, (row + 1) * nodes) ?? null,
+        strength,
+        re,
+        im,
+        row * size,
+        1,
+      );
     }
     const rows = kernelRows(vertex.element, kernels.grid, onShell, vertex.ridge, problem.E.re);
     for (let s = 0; s < onShell.length; s++) {
-      accumulate(rows.re.subarray(s * nodes, (s + 1) * nodes), rows.im.subarray(s * nodes, (s + 1) * nodes), strength, re, im, (nodes + s) * size, 1);
+      accumulate(
+        rows.re.subarray(s * nodes, (s + 1) * nodes),
+        rows.im.subarray(s * nodes, (s + 1) * nodes),
+        strength,
+        re,
+        im,
+        (nodes + s) * size,
+        1,
+      );
       const column = kernelColumn(vertex.element, loop, onShell[s], problem.E.re);
       accumulate(column.re, column.im, strength, re, im, nodes + s, size);
     }
@@ -36,7 +52,15 @@ export function potentialMatrix(kernels: GridKernels, parts: readonly ScaledVert
   return { size, re, im };
 }
 
-function accumulate(x: Float64Array, y: Float64Array | null, s: Complex, re: Float64Array, im: Float64Array | null, start: number, stride: number): void {
+function accumulate(
+  x: Float64Array,
+  y: Float64Array | null,
+  s: Complex,
+  re: Float64Array,
+  im: Float64Array | null,
+  start: number,
+  stride: number,
+): void {
   for (let j = 0, at = start; j < x.length; j++, at += stride) {
     re[at] += s.re * x[j] - (y ? s.im * y[j] : 0);
     if (im) im[at] += s.im * x[j] + (y ? s.re * y[j] : 0);

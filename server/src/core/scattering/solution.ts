@@ -11,7 +11,10 @@ const ONE: Complex = { re: 1, im: 0 };
 
 /** The interactions with, where they are given, the counterterms at their strengths at this cutoff. */
 export function potentialParts(at: CutoffGrid, strengths: readonly Strength[]): ScaledVertex[] {
-  return [...at.setup.vertices.map(vertex => ({ vertex, strength: ONE })), ...strengths.map(s => ({ vertex: s.counterterm.vertex, strength: s.value }))];
+  return [
+    ...at.setup.vertices.map(vertex => ({ vertex, strength: ONE })),
+    ...strengths.map(s => ({ vertex: s.counterterm.vertex, strength: s.value })),
+  ];
 }
 
 /** The non-perturbative amplitude at one on-shell momentum. */
@@ -46,7 +49,14 @@ export function fullAmplitude(at: CutoffGrid, parts: readonly ScaledVertex[], po
     return { forward: scaled(forward), backward: scaled(backward), phaseShift: null, transmission, reflection, tangent: NaN };
   }
   const tangent = -density * k[column][column].re;
-  return { forward: scaled(forward), backward: null, phaseShift: (Math.atan(tangent) * 180) / Math.PI, transmission: null, reflection: null, tangent };
+  return {
+    forward: scaled(forward),
+    backward: null,
+    phaseShift: (Math.atan(tangent) * 180) / Math.PI,
+    transmission: null,
+    reflection: null,
+    tangent,
+  };
 }
 
 /** Weinberg's eigenvalues of the interactions at one momentum and at this grid's cutoff. */
@@ -56,7 +66,13 @@ export function convergenceAt(at: CutoffGrid, point: OnShellPoint): ConvergenceR
   const largest = values[0] ?? { re: 0, im: 0 };
   const size = Math.hypot(largest.re, largest.im);
   const decided = Math.abs(size - 1) > residual && Number.isFinite(size);
-  return { p: point.p, E: point.E, largestEigenvalue: Number.isFinite(size) ? largest : null, converges: decided ? size < 1 : null, eigenvalues: Number.isFinite(size) ? values : [] };
+  return {
+    p: point.p,
+    E: point.E,
+    largestEigenvalue: Number.isFinite(size) ? largest : null,
+    converges: decided ? size < 1 : null,
+    eigenvalues: Number.isFinite(size) ? values : [],
+  };
 }
 
 /** Binding energies below threshold, deepest first: zeros of det(1 - V G(E)), looked for at 160 momenta κ from 1e-4 of the cutoff to twice it. */

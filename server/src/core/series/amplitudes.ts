@@ -8,7 +8,13 @@ import type { StrengthLaw } from './contact-declared';
 import { loopWeights, type LoopWeights } from './loop-weights';
 import { kernelScales, oscillationLength, type Setup } from './setup';
 import {
-  blockAmplitude, conditionMatrix, externalsAt, subtractionGroups, type Counterterm, type SubtractionGroup, type SubtractionPoint,
+  blockAmplitude,
+  conditionMatrix,
+  externalsAt,
+  subtractionGroups,
+  type Counterterm,
+  type SubtractionGroup,
+  type SubtractionPoint,
 } from './subtraction';
 import { amplitudesFromStandingWaves, type Block } from './unitarity';
 
@@ -67,7 +73,12 @@ export class CutoffGrid {
     pointsPerPanel: number,
   ) {
     const subtraction = setup.counterterms.filter(c => c.spec.scheme.kind !== 'minimal').map(c => c.spec.scheme.at);
-    this.grid = momentumGrid(setup.kinematics, setup.regulator, cutoff, gridWishes(setup, cutoff, [...momenta, ...subtraction], pointsPerPanel));
+    this.grid = momentumGrid(
+      setup.kinematics,
+      setup.regulator,
+      cutoff,
+      gridWishes(setup, cutoff, [...momenta, ...subtraction], pointsPerPanel),
+    );
     this.kernels = new GridKernels(this.grid);
   }
 }
@@ -78,14 +89,38 @@ export function seriesAtCutoff(at: CutoffGrid, points: readonly OnShellPoint[], 
   const problems = points.map(point => onShellWeights(at, point));
   const bare = runBare(at, problems);
   if (setup.counterterms.length === 0) {
-    const amplitudes = points.map((point, j) => onShell(setup, cutoff, problems[j], point, bare.map(blocks => blocks[j])));
+    const amplitudes = points.map((point, j) =>
+      onShell(
+        setup,
+        cutoff,
+        problems[j],
+        point,
+        bare.map(blocks => blocks[j]),
+      ),
+    );
     return { cutoff, bare: amplitudes, renormalised: amplitudes, strengths: [] };
   }
   const run = runRenormalised(at, problems, laws);
   return {
     cutoff,
-    bare: points.map((point, j) => onShell(setup, cutoff, problems[j], point, bare.map(blocks => blocks[j]))),
-    renormalised: points.map((point, j) => onShell(setup, cutoff, problems[j], point, run.standing.map(blocks => blocks[j]))),
+    bare: points.map((point, j) =>
+      onShell(
+        setup,
+        cutoff,
+        problems[j],
+        point,
+        bare.map(blocks => blocks[j]),
+      ),
+    ),
+    renormalised: points.map((point, j) =>
+      onShell(
+        setup,
+        cutoff,
+        problems[j],
+        point,
+        run.standing.map(blocks => blocks[j]),
+      ),
+    ),
     strengths: run.strengths,
   };
 }
@@ -115,7 +150,11 @@ function blockFrom(chain: GridChain, n: number, problem: number, count: number):
   return indices.map(row => indices.map(column => chain.amplitude(n, problem, row, column)));
 }
 
-function runRenormalised(at: CutoffGrid, problems: readonly LoopWeights[], laws: readonly StrengthLaw[]): { standing: Block[][]; strengths: Strength[] } {
+function runRenormalised(
+  at: CutoffGrid,
+  problems: readonly LoopWeights[],
+  laws: readonly StrengthLaw[],
+): { standing: Block[][]; strengths: Strength[] } {
   const { setup } = at;
   const { list, vertices, kinematics, counterterms } = setup;
   const groups = list.terms.map(t => subtractionGroups(counterterms, t.exponents, kinematics));
@@ -130,18 +169,32 @@ function runRenormalised(at: CutoffGrid, problems: readonly LoopWeights[], laws:
   const strengths: Strength[] = [];
   const standing = list.terms.map((_, n) => {
     chain.step(n);
-    const set: Strength[] = laws.filter(l => l.term === n).map(l => ({ counterterm: l.counterterm, term: n, value: evaluateLaw(l.law, at.cutoff) }));
-    for (const group of groups[n]) set.push(...solveGroup(group, n, (point, row, column) => amplitudeAt(chain, n, all, indexOf(point), point, row, column)));
+    const set: Strength[] = laws
+      .filter(l => l.term === n)
+      .map(l => ({ counterterm: l.counterterm, term: n, value: evaluateLaw(l.law, at.cutoff) }));
+    for (const group of groups[n])
+      set.push(...solveGroup(group, n, (point, row, column) => amplitudeAt(chain, n, all, indexOf(point), point, row, column)));
     if (set.length) {
       strengths.push(...set);
-      chain.addCounterterm(n, set.map((s): ScaledVertex => ({ vertex: s.counterterm.vertex, strength: s.value })));
+      chain.addCounterterm(
+        n,
+        set.map((s): ScaledVertex => ({ vertex: s.counterterm.vertex, strength: s.value })),
+      );
     }
     return problems.map((p, j) => blockFrom(chain, n, j, p.externals.length));
   });
   return { standing, strengths };
 }
 
-function amplitudeAt(chain: GridChain, n: number, all: readonly LoopWeights[], problem: number, point: SubtractionPoint, row: 1 | -1, column: 1 | -1): Complex {
+function amplitudeAt(
+  chain: GridChain,
+  n: number,
+  all: readonly LoopWeights[],
+  problem: number,
+  point: SubtractionPoint,
+  row: 1 | -1,
+  column: 1 | -1,
+): Complex {
   const externals = all[problem].externals;
   return chain.amplitude(n, problem, nearest(externals, row * point.momentum), nearest(externals, column * point.momentum));
 }
@@ -154,7 +207,11 @@ export function nearest(externals: readonly number[], momentum: number): number 
   return best;
 }
 
-function solveGroup(group: SubtractionGroup, term: number, value: (point: SubtractionPoint, row: 1 | -1, column: 1 | -1) => Complex): Strength[] {
+function solveGroup(
+  group: SubtractionGroup,
+  term: number,
+  value: (point: SubtractionPoint, row: 1 | -1, column: 1 | -1) => Complex,
+): Strength[] {
   const rhs = group.weights.map(weights => {
     const sum = { re: 0, im: 0 };
     group.points.forEach((point, j) => {

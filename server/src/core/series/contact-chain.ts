@@ -65,7 +65,8 @@ export function vertexGrid(terms: readonly MomentumTerm[], point: Pick<EnergyPoi
   const im = new Float64Array(size * size);
   for (const t of terms) {
     let power = { re: 1, im: 0 };
-    for (let j = 0; j < t.e; j++) power = { re: power.re * point.E.re - power.im * point.E.im, im: power.re * point.E.im + power.im * point.E.re };
+    for (let j = 0; j < t.e; j++)
+      power = { re: power.re * point.E.re - power.im * point.E.im, im: power.re * point.E.im + power.im * point.E.re };
     re[t.a * size + t.b] += t.re * power.re - t.im * power.im;
     im[t.a * size + t.b] += t.re * power.im + t.im * power.re;
   }
@@ -82,7 +83,7 @@ function sumOfChains(
 ): Grid {
   // Σ_b W^{ab} I_{b+c} for each link first, so that the triple product costs two double ones.
   const dressed = links.map(link => {
-    const grid: (Laurent | null)[] = new Array(size * size).fill(null);
+    const grid = Array.from({ length: size * size }, (): Laurent | null => null);
     for (let a = 0; a < size; a++) {
       for (let c = 0; c < size; c++) {
         ring.clear();

@@ -31,7 +31,13 @@ export function contactAgrees(contacts: ContactSetting, exact: Grid, ladder: Lad
 }
 
 /** Σ_ab R^{ab}(L) p^a k^b, with the sum of the moduli. */
-function laurentValue({ ring, size }: ContactSetting, grid: Grid, p: number, k: number, L: number): { re: number; im: number; size: number } {
+function laurentValue(
+  { ring, size }: ContactSetting,
+  grid: Grid,
+  p: number,
+  k: number,
+  L: number,
+): { re: number; im: number; size: number } {
   const sum = { re: 0, im: 0, size: 0 };
   grid.forEach((c, s) => {
     if (!c) return;

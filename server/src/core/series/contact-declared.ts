@@ -41,7 +41,12 @@ export function declaredScheme(setting: ContactSetting, counterterms: readonly C
   const testMomentum = setting.momentum * 0.8660254;
   const test = at({ re: kinematics.energy(testMomentum), im: 0 });
   groupsOf.forEach(groups => groups.forEach(g => g.points.forEach(p => at({ re: p.E, im: 0 }))));
-  const away = counterterms.some(c => c.spec.scheme.kind === 'minimal') ? [0.31, 0.57, 0.83].map(f => at(energyAway(kinematics, setting.momentum, f))) : [];
+  const minimalOnes = counterterms.filter(c => c.spec.scheme.kind === 'minimal');
+  // Enough energies to tell the powers of E in the forms apart, and what they multiply.
+  const powersOfEnergy = 2 + Math.max(0, ...minimalOnes.flatMap(c => c.vertex.contact ?? []).map(t => t.e)) + 1;
+  const away = minimalOnes.length
+    ? Array.from({ length: powersOfEnergy }, (_, j) => at(energyAway(kinematics, setting.momentum, (j + 0.7) / powersOfEnergy)))
+    : [];
   const strengths: StrengthLaw[] = [];
   const singular: { group: SubtractionGroup; monomial: Monomial }[] = [];
   const chain = contactChain(list, setting.vertices, points, ring, size, (n, remainder) => {
@@ -51,7 +56,9 @@ export function declaredScheme(setting: ContactSetting, counterterms: readonly C
       if (solved) solved.forEach((strength, j) => added.push({ counterterm: group.counterterms[j], strength }));
       else singular.push({ group, monomial: list.terms[n].exponents });
     }
-    const minimal = counterterms.filter(c => c.spec.scheme.kind === 'minimal' && c.spec.cancels.some(m => m.join() === list.terms[n].exponents.join()));
+    const minimal = counterterms.filter(
+      c => c.spec.scheme.kind === 'minimal' && c.spec.cancels.some(m => m.join() === list.terms[n].exponents.join()),
+    );
     for (const scale of new Set(minimal.map(c => c.spec.scheme.at))) {
       solveMinimal(setting, minimal, scale, remainder, away, points)?.forEach((strength, j) => {
         if (minimal[j].spec.scheme.at !== scale) return;
@@ -63,7 +70,8 @@ export function declaredScheme(setting: ContactSetting, counterterms: readonly C
     return points.map(point => sumOfForms(setting, added, point));
   });
   const growth = chain.map((grids, n) => {
-    if (!grids || counterterms.some(c => !c.vertex.contact && c.spec.cancels.some(m => m.every((e, i) => e <= list.terms[n].exponents[i])))) return null;
+    if (!grids || counterterms.some(c => !c.vertex.contact && c.spec.cancels.some(m => m.every((e, i) => e <= list.terms[n].exponents[i]))))
+      return null;
     return onShellGrowth(setting, grids[test], testMomentum);
   });
   return { growth, strengths, singular };
@@ -71,13 +79,16 @@ export function declaredScheme(setting: ContactSetting, counterterms: readonly C
 
 function sumOfForms(setting: ContactSetting, added: readonly { counterterm: Counterterm; strength: Laurent }[], point: EnergyPoint): Grid {
   const { ring, size } = setting;
-  const forms = added.map(({ counterterm, strength }) => ({ grid: vertexGrid(counterterm.vertex.contact ?? [], point, ring, size), strength }));
+  const forms = added.map(({ counterterm, strength }) => ({
+    grid: vertexGrid(counterterm.vertex.contact ?? [], point, ring, size),
+    strength,
+  }));
   return Array.from({ length: size * size }, (_, s) => {
     ring.clear();
     let any = false;
     for (const { grid, strength } of forms) {
       if (!grid[s]) continue;
-      ring.addProduct(grid[s]!, strength);
+      ring.addProduct(grid[s], strength);
       any = true;
     }
     return any ? ring.take() : null;
@@ -96,13 +107,19 @@ function onShellGrowth(setting: ContactSetting, grid: Grid, momentum: number): {
   let best = { power: 0, log: 0 };
   for (const p of externalsAt(setting.kinematics, momentum)) {
     for (const k of externalsAt(setting.kinematics, momentum)) {
-      for (const t of setting.ring.terms(valueAt(setting, grid, p, k))) if (growsFaster(t.power, t.log, best.power, best.log)) best = { power: t.power, log: t.log };
+      for (const t of setting.ring.terms(valueAt(setting, grid, p, k)))
+        if (growsFaster(t.power, t.log, best.power, best.log)) best = { power: t.power, log: t.log };
     }
   }
   return best;
 }
 
-function solveConditions(setting: ContactSetting, group: SubtractionGroup, remainder: readonly Grid[], at: (E: Complex) => number): Laurent[] | null {
+function solveConditions(
+  setting: ContactSetting,
+  group: SubtractionGroup,
+  remainder: readonly Grid[],
+  at: (E: Complex) => number,
+): Laurent[] | null {
   const { ring } = setting;
   const rhs = group.weights.map(weights => {
     const parts: { value: Laurent; weight: Complex }[] = [];
@@ -134,7 +151,7 @@ function solveMinimal(
 ): Laurent[] | null {
   const { ring, size } = setting;
   const targets = away.map(j => minimalCounterterm(remainder[j], ring, scale));
-  const value = (grid: Grid, s: number): Complex => (grid[s] ? { re: grid[s]!.re[0], im: grid[s]!.im[0] } : { re: 0, im: 0 });
+  const value = (grid: Grid, s: number): Complex => (grid[s] ? { re: grid[s].re[0], im: grid[s].im[0] } : { re: 0, im: 0 });
   const forms = minimal.map(c => away.map(j => vertexGrid(c.vertex.contact ?? [], points[j], ring, size)));
   const cells = away.flatMap((_, j) => Array.from({ length: size * size }, (_, s) => ({ j, s })));
   // Normal equations of a handful of forms.
@@ -165,7 +182,12 @@ function sumOf<T>(items: readonly T[], f: (item: T) => Complex): Complex {
 
 /** A x = b with numbers in A and Laurent polynomials in b: the inverse of A, applied slot by slot. */
 function solveLaurent({ ring }: ContactSetting, a: readonly (readonly Complex[])[], b: readonly Laurent[]): Laurent[] | null {
-  const inverse = a.map((_, j) => solveSmall(a, a.map((_, i) => ({ re: i === j ? 1 : 0, im: 0 }))));
+  const inverse = a.map((_, j) =>
+    solveSmall(
+      a,
+      a.map((_, i) => ({ re: i === j ? 1 : 0, im: 0 })),
+    ),
+  );
   if (inverse.some(column => column === null)) return null;
   return a.map((_, i) => {
     ring.clear();

@@ -102,12 +102,16 @@ export function contactOverall(setting: ContactSetting, scale = 1): ({ forms: Ov
   });
   return setting.list.terms.map((term, n) => {
     if (term.exponents.some((m, i) => m > 0 && !setting.vertices[i])) return null;
-    return found[n] ? formsOf(found[n]!, energies, setting) : { forms: [], local: true };
+    return found[n] ? formsOf(found[n], energies, setting) : { forms: [], local: true };
   });
 }
 
 /** The growing part (minus the counterterm) as forms: each coefficient must be a polynomial in E of a degree below the number of energies. */
-function formsOf(counterterms: readonly Grid[], energies: readonly Complex[], { ring, size }: ContactSetting): { forms: OverallDivergence[]; local: boolean } {
+function formsOf(
+  counterterms: readonly Grid[],
+  energies: readonly Complex[],
+  { ring, size }: ContactSetting,
+): { forms: OverallDivergence[]; local: boolean } {
   const byGrowth = new Map<string, { power: number; log: number; coefficients: LocalCoefficient[] }>();
   let local = true;
   for (let s = 0; s < size * size; s++) {

@@ -50,14 +50,22 @@ export class DenseOperator {
     const complex = !vertex.element.real || this.problems.some(p => p.E.im !== 0) || functions.some(list => list.some(f => f.im));
     const inputs = functions.map((list, at) => list.map(f => this.timesPropagator(f, at, complex)));
     const outputs = functions.map((list, at) =>
-      list.map((): Column => ({ re: new Float64Array(this.problems[at].points.length), im: complex ? new Float64Array(this.problems[at].points.length) : null })),
+      list.map((): Column => ({
+        re: new Float64Array(this.problems[at].points.length),
+        im: complex ? new Float64Array(this.problems[at].points.length) : null,
+      })),
     );
     const groups = new Map<KernelOnGrid, number[]>();
     this.problems.forEach((p, at) => {
       const kernel = this.kernels.of(vertex, p.E.re);
       groups.set(kernel, [...(groups.get(kernel) ?? []), at]);
     });
-    for (const [kernel, members] of groups) applyKernel(kernel, members.flatMap(at => inputs[at]), members.flatMap(at => outputs[at]));
+    for (const [kernel, members] of groups)
+      applyKernel(
+        kernel,
+        members.flatMap(at => inputs[at]),
+        members.flatMap(at => outputs[at]),
+      );
     this.problems.forEach((problem, at) => this.addEdges(vertex, problem, at, inputs[at], outputs[at]));
     return outputs;
   }

@@ -20,10 +20,16 @@ export interface Evaluation {
 /** Nodes a panel, and fewer for the error; contacts alone cost so little that they get more. */
 const nodesFor = (setup: Setup) => (setup.vertices.every(v => v.contact) ? { fine: 16, coarse: 12 } : { fine: 12, coarse: 9 });
 
-export function evaluateSeries(setup: Setup, points: readonly OnShellPoint[], laws: readonly StrengthLaw[], onStep: (done: number) => void): Evaluation {
+export function evaluateSeries(
+  setup: Setup,
+  points: readonly OnShellPoint[],
+  laws: readonly StrengthLaw[],
+  onStep: (done: number) => void,
+): Evaluation {
   const momenta = points.map(p => p.p);
   const { cutoff } = setup.spec;
-  const run = (L: number, some: readonly OnShellPoint[], nodes: number) => seriesAtCutoff(new CutoffGrid(setup, L, momenta, nodes), some, laws);
+  const run = (L: number, some: readonly OnShellPoint[], nodes: number) =>
+    seriesAtCutoff(new CutoffGrid(setup, L, momenta, nodes), some, laws);
   const { fine, coarse: fewer } = nodesFor(setup);
   const cutoffs = scanCutoffs(setup).filter(L => setup.regulator.shape.kind !== 'sharp' || L > 1.02 * points[0].p);
   const at = run(cutoff.value, points, fine);
@@ -59,7 +65,8 @@ export function valuesOf(setup: Setup, evaluation: Evaluation, n: number): Value
     const size = Math.max(modulus(bare.forward), bare.backward ? modulus(bare.backward) : 0);
     const uncertainty = gap + kernelError * size + 4e-15 * size;
     if (!Number.isFinite(uncertainty)) return { p, E, bare: null, renormalised: null, uncertainty: null };
-    const backward = bare.backward && renormalised.backward ? { backward: { bare: bare.backward, renormalised: renormalised.backward } } : {};
+    const backward =
+      bare.backward && renormalised.backward ? { backward: { bare: bare.backward, renormalised: renormalised.backward } } : {};
     return { p, E, bare: bare.forward, renormalised: renormalised.forward, ...backward, uncertainty };
   });
 }
@@ -115,7 +122,8 @@ export function couplingResults(setup: Setup, evaluation: Evaluation | null): Co
       return share === null ? [] : [{ counterterm: c, share }];
     });
     if (others || !absorbing.length) return plain;
-    const running = (result: CutoffResult) => value * (1 + total(absorbing.map(a => timesReal(strengthOf(result, a.counterterm), a.share))).re);
+    const running = (result: CutoffResult) =>
+      value * (1 + total(absorbing.map(a => timesReal(strengthOf(result, a.counterterm), a.share))).re);
     return { ...plain, running: { cutoff: evaluation.scan.map(s => s.cutoff), value: evaluation.scan.map(running) } };
   });
 }

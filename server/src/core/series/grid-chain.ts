@@ -13,7 +13,9 @@ export interface ScaledVertex {
 }
 
 /** The powers of momentum that occur in contacts. */
-export const contactPowers = (vertices: readonly Vertex[]): number[] => [...new Set(vertices.flatMap(v => v.contact ?? []).flatMap(t => [t.a, t.b]))];
+export const contactPowers = (vertices: readonly Vertex[]): number[] => [
+  ...new Set(vertices.flatMap(v => v.contact ?? []).flatMap(t => [t.a, t.b])),
+];
 
 /** A vertex with the part of a monomial that it stands for: one factor for an interaction, all of it for a counterterm. */
 interface Placed<V> {
@@ -73,17 +75,32 @@ export class GridChain {
     this.operator = new DenseOperator(kernels, problems);
     this.basis = [...new Set([...contactPowers(vertices), ...morePowers])].sort((x, y) => x - y);
     this.states = problems.map(p => this.basis.map(a => ({ re: p.points.map(k => k ** a), im: null })));
-    vertices.forEach((vertex, i) => this.place(vertices.map((_, j) => (i === j ? 1 : 0)), vertex, { re: 1, im: 0 }));
+    vertices.forEach((vertex, i) =>
+      this.place(
+        vertices.map((_, j) => (i === j ? 1 : 0)),
+        vertex,
+        { re: 1, im: 0 },
+      ),
+    );
   }
 
   step(n: number): void {
     const { exponents } = this.list.terms[n];
     const runs = this.dense.filter(d => isPart(d.content, exponents)).map(d => ({ ...d.part, rest: this.rest(exponents, d.content) }));
-    const dressed = this.sumOfRuns(runs, rest => (rest < 0 ? this.states : this.problems.map((_, at) => this.shares[rest][at].dressed ?? [])), null);
-    const ending = this.sumOfRuns(runs, rest => (rest < 0 ? null : this.problems.map((_, at) => this.shares[rest][at].ending ?? [])), this.problems);
+    const dressed = this.sumOfRuns(
+      runs,
+      rest => (rest < 0 ? this.states : this.problems.map((_, at) => this.shares[rest][at].dressed ?? [])),
+      null,
+    );
+    const ending = this.sumOfRuns(
+      runs,
+      rest => (rest < 0 ? null : this.problems.map((_, at) => this.shares[rest][at].ending ?? [])),
+      this.problems,
+    );
     this.shares[n] = this.problems.map((problem, at) => {
       const u = zeros(problem.columns.length * this.basis.length);
-      for (const { content, part } of this.contacts) if (isPart(content, exponents)) this.addContact(part, at, this.rest(exponents, content), u);
+      for (const { content, part } of this.contacts)
+        if (isPart(content, exponents)) this.addContact(part, at, this.rest(exponents, content), u);
       return this.finish(n, at, emptyToNull(dressed[at]), emptyToNull(ending[at]), u);
     });
   }
@@ -217,7 +234,8 @@ export class GridChain {
       const j = share.dressedMoments!;
       for (let column = 0; column < columns; column++) {
         for (let b = 0; b < size; b++) {
-          for (let a = 0; a < size; a++) addProduct(moments, column * size + b, j.re[a * size + b], j.im[a * size + b], behind.u, column * size + a);
+          for (let a = 0; a < size; a++)
+            addProduct(moments, column * size + b, j.re[a * size + b], j.im[a * size + b], behind.u, column * size + a);
         }
       }
     });
@@ -247,7 +265,8 @@ export class GridChain {
         let re = 0;
         let im = 0;
         for (let j = 0; j < g.re.length; j++) re += k[j] * (g.re[j] * f.re[j] - (f.im ? g.im[j] * f.im[j] : 0));
-        if (f.im || this.problems[at].E.im !== 0) for (let j = 0; j < g.re.length; j++) im += k[j] * (g.im[j] * f.re[j] + (f.im ? g.re[j] * f.im[j] : 0));
+        if (f.im || this.problems[at].E.im !== 0)
+          for (let j = 0; j < g.re.length; j++) im += k[j] * (g.im[j] * f.re[j] + (f.im ? g.re[j] * f.im[j] : 0));
         result.re[c * size + b] = re;
         result.im[c * size + b] = im;
       }
@@ -275,7 +294,10 @@ function addProduct(into: Numbers, at: number, re: number, im: number, x: Number
 function scaledSum(total: Column | null, x: Column, strength: Complex): Column {
   if (!total && strength.re === 1 && strength.im === 0) return x;
   const complex = Boolean(x.im) || strength.im !== 0 || Boolean(total?.im);
-  const sum = { re: total ? total.re.slice() : new Float64Array(x.re.length), im: complex ? (total?.im?.slice() ?? new Float64Array(x.re.length)) : null };
+  const sum = {
+    re: total ? total.re.slice() : new Float64Array(x.re.length),
+    im: complex ? (total?.im?.slice() ?? new Float64Array(x.re.length)) : null,
+  };
   addMultiple(x, strength, sum);
   return sum;
 }

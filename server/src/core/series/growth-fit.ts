@@ -9,8 +9,9 @@ export interface NumericalGrowth {
   readonly log: number;
 }
 
-/** Relative rounding of a grid amplitude. */
+/** Relative error of a grid amplitude: what differences may be taken for nothing, and what a fit has to reckon with in each number. */
 const NOISE = 1e-11;
+const ROUNDING = 3e-14;
 
 /**
  * Growth from the numbers alone. y(L) at cutoffs in constant ratio: the differences of L^a ln^b L fall or grow as L^a ln^b L themselves
@@ -35,7 +36,8 @@ export function growthFromNumbers(cutoffs: readonly number[], y: readonly Comple
     const last = modulus(scaled[scaled.length - 1]);
     const next = scaled.slice(1).map((v, j) => subtract(v, scaled[j]));
     const ends = next.slice(-3).map(modulus);
-    if (ends[2] <= 30 * NOISE * last * 2 ** b || ends[2] < 0.74 * ends[1]) return { verdict: power > 0 || b > 0 ? 'diverges' : 'converges', power, log: b };
+    if (ends[2] <= 30 * NOISE * last * 2 ** b || ends[2] < 0.74 * ends[1])
+      return { verdict: power > 0 || b > 0 ? 'diverges' : 'converges', power, log: b };
     logs.push(b);
     scaled = next;
   }
@@ -53,11 +55,15 @@ export function growsAs(cutoffs: readonly number[], y: readonly Complex[], predi
   if (seen.verdict === 'converges' || Math.abs(seen.power - predicted.power) > (seen.verdict === 'unclear' ? Infinity : 0.5)) return false;
   const { power, log } = predicted;
   const growing = Array.from({ length: log + 2 }, (_, j) => ({ power, log: log + 1 - j }));
-  const falling = [1, 2, 3].flatMap(d => (d === 1 ? [2, 1, 0] : [1, 0]).map(b => ({ power: power - d, log: b }))).slice(0, cutoffs.length - growing.length - 2);
+  const falling = [1, 2, 3]
+    .flatMap(d => (d === 1 ? [2, 1, 0] : [1, 0]).map(b => ({ power: power - d, log: b })))
+    .slice(0, cutoffs.length - growing.length - 2);
   const last = Math.log(cutoffs[cutoffs.length - 1]);
   const fit = growthFit(cutoffs, growing, falling);
   if (!fit) return false;
-  const sizes = [y.map(v => v.re), y.map(v => v.im)].map(part => fit(part).coefficients.map((c, j) => Math.abs(c) * last ** growing[j].log));
+  const sizes = [y.map(v => v.re), y.map(v => v.im)].map(part =>
+    fit(part).coefficients.map((c, j) => Math.abs(c) * last ** growing[j].log),
+  );
   const unpredicted = Math.hypot(sizes[0][0], sizes[1][0]);
   const wanted = Math.hypot(sizes[0][1], sizes[1][1]);
   return unpredicted < 0.05 * wanted;
@@ -71,7 +77,8 @@ export interface Growth {
 
 /**
  * The least-squares fit of Σ c L^a ln^b(L/scale) to numbers at these cutoffs, as a function of the numbers: coefficients of the wanted
- * growths (terms that fall off are fitted beside them), and how far each moves when the lowest cutoff is dropped. Null where the cutoffs
+ * growths (terms that fall off are fitted beside them), and their errors: how far each moves when the lowest
+ * cutoff is dropped, and no less than what rounding of the numbers makes of it. Null where the cutoffs
  * are too few or do not tell the terms apart.
  */
 export function growthFit(
@@ -88,7 +95,8 @@ export function growthFit(
   return y => {
     const coefficients = growing.map((_, j) => dot(whole[j], y));
     const others = growing.map((_, j) => dot(shorter[j], y.slice(1)));
-    return { coefficients, shift: coefficients.map((c, j) => Math.abs(c - others[j])) };
+    const rounding = growing.map((_, j) => ROUNDING * Math.hypot(...whole[j].map((m, i) => m * y[i])));
+    return { coefficients, shift: coefficients.map((c, j) => Math.max(Math.abs(c - others[j]), rounding[j])) };
   };
 }
 
@@ -97,7 +105,12 @@ function fitMatrix(cutoffs: readonly number[], all: readonly Growth[], scale: nu
   const unit = cutoffs[0];
   const highest = Math.max(0, ...all.map(g => g.power));
   const rows = cutoffs.map(L => all.map(g => (L / unit) ** (g.power - highest) * Math.log(L / scale) ** g.log));
-  const columns = cutoffs.map((L, j) => leastSquares(rows, cutoffs.map((_, i) => (i === j ? (L / unit) ** -highest : 0))));
+  const columns = cutoffs.map((L, j) =>
+    leastSquares(
+      rows,
+      cutoffs.map((_, i) => (i === j ? (L / unit) ** -highest : 0)),
+    ),
+  );
   if (columns.some(c => c === null)) return null;
   return all.map((g, t) => columns.map(c => c![t] * unit ** -g.power));
 }

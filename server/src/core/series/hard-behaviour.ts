@@ -69,7 +69,8 @@ const plain = (degree: number, log = 0): Degree => ({ degree, log, phase: 0, sig
 function localBehaviour(shape: LocalShape, { dimension }: Kinematics, angular: number): HardBehaviour {
   const tails = localTails(shape);
   // A transfer k - p grows with the loop momentum; each partial wave of k^γ(1 + …) starts l powers of p/k further down.
-  const soft = (terms: readonly TailTerm[], sign: 1 | -1): Degree[] => terms.map(t => ({ degree: t.power - angular, log: t.log, phase: t.phase, sign }));
+  const soft = (terms: readonly TailTerm[], sign: 1 | -1): Degree[] =>
+    terms.map(t => ({ degree: t.power - angular, log: t.log, phase: t.phase, sign }));
   const both = [...tails.forward, ...tails.backward];
   const steepest = both.length ? Math.max(...both.map(t => t.power)) : -Infinity;
   return {
@@ -84,7 +85,8 @@ function localBehaviour(shape: LocalShape, { dimension }: Kinematics, angular: n
 function localTails(shape: LocalShape): { forward: readonly TailTerm[]; backward: readonly TailTerm[] } {
   if (shape.tail) return { forward: shape.tail, backward: shape.backwardTail ?? shape.tail };
   if (!shape.transfer) throw new UnknownBehaviour('its transform is known by numbers only');
-  const along = (sign: 1 | -1) => expand(shape.transfer!, new Map([['q', linear(sign, 0)]])).map(t => ({ coefficient: t.c, power: t.power, log: t.log, phase: 0 }));
+  const along = (sign: 1 | -1) =>
+    expand(shape.transfer!, new Map([['q', linear(sign, 0)]])).map(t => ({ coefficient: t.c, power: t.power, log: t.log, phase: 0 }));
   return { forward: along(1), backward: along(-1) };
 }
 

@@ -11,7 +11,13 @@ export function infraredVerdicts(setup: Setup): { verdicts: TermResult['infrared
   });
   const remarks = setup.vertices.flatMap((v, i): Remark[] =>
     singular[i]
-      ? [{ code: 'infrared-divergence', subject: v.name, message: `${v.name} is infinite on shell, at p = k: a range without end. Give the exchange a mass (a screening scale) and follow the result as it is lowered.` }]
+      ? [
+          {
+            code: 'infrared-divergence',
+            subject: v.name,
+            message: `${v.name} is infinite on shell, at p = k: a range without end. Give the exchange a mass (a screening scale) and follow the result as it is lowered.`,
+          },
+        ]
       : [],
   );
   return { verdicts: setup.list.terms.map(t => (t.exponents.some((m, i) => m > 0 && singular[i]) ? 'diverges' : 'converges')), remarks };

@@ -67,8 +67,13 @@ export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const energies = Array.from({ length: wishes.energies }, (_, j) => energyAway(kinematics, soft, 0.7310585786 + 0.6 * j));
   const rungs = cutoffs.map(cutoff => {
     const soft = { external: 0, edgeWidth: Math.min(Infinity, ...scales) };
-    const grid = momentumGrid(kinematics, regulator, cutoff, { ...gridWishes(setup, cutoff, momenta, wishes.pointsPerPanel), ...(length > 0 ? {} : soft) });
-    const problems = energies.map(E => loopWeights(kinematics, regulator, grid, E, false, externals, 2 * Math.max(setup.size, ...wishes.powers), contactPowers(vertices)));
+    const grid = momentumGrid(kinematics, regulator, cutoff, {
+      ...gridWishes(setup, cutoff, momenta, wishes.pointsPerPanel),
+      ...(length > 0 ? {} : soft),
+    });
+    const problems = energies.map(E =>
+      loopWeights(kinematics, regulator, grid, E, false, externals, 2 * Math.max(setup.size, ...wishes.powers), contactPowers(vertices)),
+    );
     const kernels = new GridKernels(grid);
     const start = () => new GridChain(list, vertices, kernels, problems, wishes.powers);
     return { start, chain: start(), cutoff };
@@ -80,7 +85,13 @@ export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
     externals,
     step: n => rungs.forEach(rung => rung.chain.step(n)),
     values: (n, energy, row, column) => rungs.map(rung => wholeAmplitude(rung.chain, n, energy, externals, row, column)),
-    parts: (n, energy) => partsOf(rungs.map(rung => rung.chain), n, energy, externals),
+    parts: (n, energy) =>
+      partsOf(
+        rungs.map(rung => rung.chain),
+        n,
+        energy,
+        externals,
+      ),
     addCounterterm: (n, parts) => rungs.forEach(rung => rung.chain.addCounterterm(n, parts(rung.cutoff))),
   };
 }
@@ -109,7 +120,11 @@ function partsOf(chains: readonly GridChain[], n: number, energy: number, extern
   return rights.flatMap((right, c) => {
     const ends = chains.map(chain => chain.contactEnd(n, energy, c));
     const contacts = powers.map((power, a): AmplitudePart => ({ left: { power }, right, values: ends.map(e => e[a]) }));
-    const others = externals.map((_, momentum): AmplitudePart => ({ left: { momentum }, right, values: chains.map(chain => chain.dressedAmplitude(n, energy, momentum, c)) }));
+    const others = externals.map((_, momentum): AmplitudePart => ({
+      left: { momentum },
+      right,
+      values: chains.map(chain => chain.dressedAmplitude(n, energy, momentum, c)),
+    }));
     return [...contacts, ...others].filter(part => part.values.some(v => v.re !== 0 || v.im !== 0));
   });
 }

@@ -15,7 +15,14 @@ type PropagatorSeries = readonly { readonly m: number; readonly c: Complex }[];
  * Below every threshold (or complex E) the plain integral; above it the principal value. `negativeSide` weighs the loop momenta k < 0 of
  * dimension 1: 1 as they are; another weight tells what vanishes only between k and -k. Throws `NoExpansion`.
  */
-export function loopMoments(kinematics: Kinematics, regulator: Regulator, ring: LaurentRing, E: Complex, highest: number, negativeSide = 1): Laurent[] {
+export function loopMoments(
+  kinematics: Kinematics,
+  regulator: Regulator,
+  ring: LaurentRing,
+  E: Complex,
+  highest: number,
+  negativeSide = 1,
+): Laurent[] {
   const sides = sidesOf(kinematics, E, ring, highest, negativeSide);
   const finite = (n: number) => finitePart(kinematics, E, n, sides);
   return Array.from({ length: highest + 1 }, (_, n) => {
@@ -72,7 +79,10 @@ function propagatorSeries(kinematics: Kinematics, E: Complex, sign: 1 | -1, deep
   const g = kinetic[0]?.power ?? 0;
   if (!(g > 0)) throw new NoExpansion('the kinetic energy does not grow with momentum');
   if (kinetic.some(t => !Number.isInteger(t.power))) throw new NoExpansion('the kinetic energy is not a series in whole powers of k');
-  const inverse = inverseSeries(kinetic.map(t => ({ m: -t.power, c: t.c })), deepest);
+  const inverse = inverseSeries(
+    kinetic.map(t => ({ m: -t.power, c: t.c })),
+    deepest,
+  );
   const total = new Map<number, Complex>();
   let power = inverse;
   let factor: Complex = { re: -1, im: 0 };
@@ -84,7 +94,10 @@ function propagatorSeries(kinematics: Kinematics, E: Complex, sign: 1 | -1, deep
     power = multiplySeries(power, inverse, deepest);
     factor = { re: factor.re * E.re - factor.im * E.im, im: factor.re * E.im + factor.im * E.re };
   }
-  return [...total].map(([m, c]) => ({ m, c })).filter(t => t.c.re !== 0 || t.c.im !== 0).sort((s, t) => s.m - t.m);
+  return [...total]
+    .map(([m, c]) => ({ m, c }))
+    .filter(t => t.c.re !== 0 || t.c.im !== 0)
+    .sort((s, t) => s.m - t.m);
 }
 
 type RealSeries = readonly { readonly m: number; readonly c: number }[];
@@ -141,7 +154,9 @@ function powerMomentFinite(kinetic: { coefficient: number; exponent: number }, E
   const j = N / g;
   const whole = Math.abs(j - Math.round(j)) < 1e-12;
   if (E < 0) {
-    return whole ? ((-1) ** (Math.round(j) - 1) * q ** (N - g) * Math.log(q)) / c : (-Math.PI / (c * g)) * (q ** (N - g) / Math.sin(Math.PI * j));
+    return whole
+      ? ((-1) ** (Math.round(j) - 1) * q ** (N - g) * Math.log(q)) / c
+      : (-Math.PI / (c * g)) * (q ** (N - g) / Math.sin(Math.PI * j));
   }
   return whole ? (q ** (N - g) * Math.log(q)) / c : ((Math.PI / (c * g)) * q ** (N - g)) / Math.tan(Math.PI * j);
 }

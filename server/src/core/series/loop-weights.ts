@@ -27,7 +27,8 @@ export interface LoopWeights {
  * The right end of a chain: an external momentum; or, where the parts are wanted one by one, the power k^n that a contact leaves of it, and a
  * momentum on which only other kernels end.
  */
-export type Ending = { readonly kind: 'momentum'; readonly k: number; readonly contacts: boolean } | { readonly kind: 'power'; readonly n: number };
+export type Ending =
+  { readonly kind: 'momentum'; readonly k: number; readonly contacts: boolean } | { readonly kind: 'power'; readonly n: number };
 
 /**
  * `onShell`: take the poles at this real E; `others`: further external momenta; `highest`: how many loop moments; `separate`: powers of
@@ -56,7 +57,8 @@ export function loopWeights(
     }
   }
   const density = roots.map((root, s) => {
-    const strength = (kinematics.norm * Math.abs(root.p) ** (kinematics.dimension - 1) * regulator.leg(root.p / grid.cutoff) ** 2) / root.slope;
+    const strength =
+      (kinematics.norm * Math.abs(root.p) ** (kinematics.dimension - 1) * regulator.leg(root.p / grid.cutoff) ** 2) / root.slope;
     let sum = 0;
     for (let j = 0; j < n; j++) sum += grid.weights[j] / (root.p - grid.nodes[j]);
     re[n + s] = strength * (Math.log((root.p - grid.low) / (grid.high - root.p)) - sum);

@@ -48,14 +48,23 @@ export function countPowers(term: Term, behaviours: readonly HardBehaviour[], di
 }
 
 /** ω of one subset: its runs of neighbouring loops add up. */
-function regionOf(sequence: readonly number[], subset: number, behaviours: readonly HardBehaviour[], dimension: number, fall: number): Region {
+function regionOf(
+  sequence: readonly number[],
+  subset: number,
+  behaviours: readonly HardBehaviour[],
+  dimension: number,
+  fall: number,
+): Region {
   let total: Region = { degree: 0, log: 0, oscillates: false };
   const loops = sequence.length - 1;
   for (let start = 0; start < loops; start++) {
     if (!(subset & (1 << start))) continue;
     let end = start;
     while (end + 1 < loops && subset & (1 << (end + 1))) end++;
-    const run = runOf(sequence.slice(start, end + 2).map(i => behaviours[i]), dimension - fall);
+    const run = runOf(
+      sequence.slice(start, end + 2).map(i => behaviours[i]),
+      dimension - fall,
+    );
     total = { degree: total.degree + run.degree, log: total.log + run.log, oscillates: total.oscillates || run.oscillates };
     start = end;
   }
@@ -78,7 +87,8 @@ function runOf(vertices: readonly HardBehaviour[], perLoop: number): Region {
       const end = endsOf(left, right, vertices.length === 2);
       const degree = inside.degree + end.degree;
       const log = inside.log + end.log;
-      if (degree > best.degree || (degree === best.degree && best.oscillates && !end.oscillates)) best = { degree, log, oscillates: end.oscillates };
+      if (degree > best.degree || (degree === best.degree && best.oscillates && !end.oscillates))
+        best = { degree, log, oscillates: end.oscillates };
     }
   }
   return best;

@@ -95,12 +95,17 @@ function typicalMomentum(spec: ModelSpec, kinematics: Kinematics): number {
 
 /** Momenta over which the local kernels of a model change, where they do. */
 export function kernelScales(vertices: readonly Vertex[]): number[] {
-  return vertices.flatMap(v => localParts(v.element.shape)).map(shape => shape.scale).filter(scale => scale > 0 && Number.isFinite(scale));
+  return vertices
+    .flatMap(v => localParts(v.element.shape))
+    .map(shape => shape.scale)
+    .filter(scale => scale > 0 && Number.isFinite(scale));
 }
 
 /** Largest length of an oscillation e^(i phase k) of a kernel; 0 where there is none. */
 export function oscillationLength(vertices: readonly Vertex[]): number {
-  const phases = vertices.flatMap(v => localParts(v.element.shape)).flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])]);
+  const phases = vertices
+    .flatMap(v => localParts(v.element.shape))
+    .flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])]);
   return Math.max(0, ...phases.map(t => Math.abs(t.phase)));
 }
 

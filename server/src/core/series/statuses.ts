@@ -29,7 +29,13 @@ export function declaredContacts(setup: Setup, { contacts }: SymbolicVerdicts): 
 }
 
 /** Status of each monomial; null where only numbers can tell and `dense` was not given. */
-export function statuses(setup: Setup, symbolic: SymbolicVerdicts, terms: readonly Ultraviolet[], { scheme }: Declared, dense: readonly boolean[] | null): Status[] {
+export function statuses(
+  setup: Setup,
+  symbolic: SymbolicVerdicts,
+  terms: readonly Ultraviolet[],
+  { scheme }: Declared,
+  dense: readonly boolean[] | null,
+): Status[] {
   return terms.map((t, n): Status => {
     if (t.verdict === 'undecided' || symbolic.terms[n].tooSoft) return t.verdict === 'undecided' ? null : 'uncancelled';
     const grew = t.verdict === 'diverges' || t.verdict === 'oscillates';
@@ -50,7 +56,9 @@ function touched(setup: Setup, n: number): boolean {
 /** The counterterms of a monomial and of what is nested in it. */
 export function cancelledBy(setup: Setup, n: number): string[] {
   const { exponents } = setup.list.terms[n];
-  return setup.counterterms.filter(c => c.spec.cancels.some(m => m.join() === exponents.join() || isProperPart(m, exponents))).map(c => c.spec.name);
+  return setup.counterterms
+    .filter(c => c.spec.cancels.some(m => m.join() === exponents.join() || isProperPart(m, exponents)))
+    .map(c => c.spec.name);
 }
 
 const CUTOFFS = Array.from({ length: 8 }, (_, j) => 1.5422107 ** j);
@@ -59,12 +67,25 @@ const CUTOFFS = Array.from({ length: 8 }, (_, j) => 1.5422107 ** j);
 export function renormalisedConverges(setup: Setup, strengths: readonly StrengthLaw[], shouldStop: () => boolean): boolean[] {
   const p = setup.momentum * 0.8660254;
   const point = { p, E: setup.kinematics.energy(p) };
-  const start = 50 * Math.max(p, ...kernelScales(setup.vertices).filter(s => s < 1e3 * p), ...setup.counterterms.map(c => c.spec.scheme.at));
+  const start =
+    50 * Math.max(p, ...kernelScales(setup.vertices).filter(s => s < 1e3 * p), ...setup.counterterms.map(c => c.spec.scheme.at));
   const cutoffs = CUTOFFS.map(x => x * start);
   const runs = cutoffs.map(L => (shouldStop() ? null : seriesAtCutoff(new CutoffGrid(setup, L, [p], 16), [point], strengths)));
   if (runs.some(r => r === null)) return setup.list.terms.map(() => false);
   return setup.list.terms.map((_, n) => {
     const at = runs.map(r => r!.renormalised[0][n]);
-    return growsAs(cutoffs, at.map(a => a.forward), null) && (at[0].backward === null || growsAs(cutoffs, at.map(a => a.backward!), null));
+    return (
+      growsAs(
+        cutoffs,
+        at.map(a => a.forward),
+        null,
+      ) &&
+      (at[0].backward === null ||
+        growsAs(
+          cutoffs,
+          at.map(a => a.backward!),
+          null,
+        ))
+    );
   });
 }

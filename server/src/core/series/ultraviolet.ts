@@ -41,29 +41,48 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   if (fits) fitDense(setup, symbolic, ladder, dense, exact, fitted, 1, shouldStop);
   const strengths = fits ? denseStrengths(setup, symbolic, ladder, dense, fitted, shouldStop) : [];
   const forms = symbolic.terms.map((_, n): OverallForm[] => {
-    const list: readonly FittedForm[] = exact[n]?.forms.map(f => ({ ...f, uncertainty: 1e-10 * Math.hypot(f.coefficient.re, f.coefficient.im) })) ?? fitted[n]?.forms ?? [];
+    const list: readonly FittedForm[] =
+      exact[n]?.forms.map(f => ({ ...f, uncertainty: 1e-10 * Math.hypot(f.coefficient.re, f.coefficient.im) })) ?? fitted[n]?.forms ?? [];
     return withUniversality(setup, list);
   });
   const leftOver = forms.map(f => f.length > 0);
   const terms = symbolic.terms.map((t, n) => {
     const local = exact[n]?.local ?? fitted[n]?.local ?? true;
     const agrees = (confirmed[n] ?? false) && local;
-    if (t.verdict !== 'undecided' && !t.tooSoft && !agrees) remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, local) });
+    if (t.verdict !== 'undecided' && !t.tooSoft && !agrees)
+      remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, local) });
     return assemble(setup, symbolic, n, leftOver, forms[n], agrees);
   });
   return { terms, strengths, remarks };
 }
 
-function assemble(setup: Setup, symbolic: SymbolicVerdicts, n: number, leftOver: readonly boolean[], overall: readonly OverallForm[], confirmed: boolean): Ultraviolet {
+function assemble(
+  setup: Setup,
+  symbolic: SymbolicVerdicts,
+  n: number,
+  leftOver: readonly boolean[],
+  overall: readonly OverallForm[],
+  confirmed: boolean,
+): Ultraviolet {
   const t = symbolic.terms[n];
   const { exponents } = setup.list.terms[n];
   const nestedIn = setup.list.terms.flatMap((inner, m) => (leftOver[m] && isProperPart(inner.exponents, exponents) ? [inner.name] : []));
-  return { verdict: t.verdict, conditional: t.conditional, power: t.power, log: t.log, nested: nestedIn.length > 0, nestedIn, overall, confirmed };
+  return {
+    verdict: t.verdict,
+    conditional: t.conditional,
+    power: t.power,
+    log: t.log,
+    nested: nestedIn.length > 0,
+    nestedIn,
+    overall,
+    confirmed,
+  };
 }
 
 function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][number], local: boolean): string {
   const name = setup.list.terms[n].name;
-  if (!local) return `What is left of ${name} after subtracting everything nested is neither a polynomial in p, k, E nor one of the kernels: no counterterm is offered.`;
+  if (!local)
+    return `What is left of ${name} after subtracting everything nested is neither a polynomial in p, k, E nor one of the kernels: no counterterm is offered.`;
   const said = t.verdict === 'converges' ? 'it converges' : `it grows as L^${t.power}${t.log ? ` ln^${t.log} L` : ''}`;
   return `Whether ${name} diverges is open: power counting says that ${said}, the numbers on a ladder of cutoffs do not bear it out.`;
 }
@@ -72,8 +91,17 @@ function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly 
   const degree = Math.max(-1, ...symbolic.terms.map((t, n) => (dense[n] ? t.overallDegree : -1)));
   const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
   if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 16, powers: [], steepest };
-  const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a).filter(a => setup.kinematics.signed || a % 2 === 0).map(a => a + partialWave(setup.spec.wave));
-  return { rungs: 11 + Math.ceil(degree / 2), energies: 1 + Math.floor(degree / 2), momenta: 2 + Math.floor(degree / 2), pointsPerPanel: 16, powers, steepest };
+  const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a)
+    .filter(a => setup.kinematics.signed || a % 2 === 0)
+    .map(a => a + partialWave(setup.spec.wave));
+  return {
+    rungs: 11 + Math.ceil(degree / 2),
+    energies: 1 + Math.floor(degree / 2),
+    momenta: 2 + Math.floor(degree / 2),
+    pointsPerPanel: 16,
+    powers,
+    steepest,
+  };
 }
 
 /** Walks the ladder with the bare series: contacts against their exact values, everything else by its growth. */
@@ -105,12 +133,23 @@ function fitDense(
     ladder.step(n);
     const t = symbolic.terms[n];
     const wanted = dense[n] && t.overallDegree >= 0 && t.verdict === 'diverges';
-    if (wanted) fitted[n] = fitOverall(setup, ladder, n, t.overallDegree, scale, Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)));
+    if (wanted)
+      fitted[n] = fitOverall(
+        setup,
+        ladder,
+        n,
+        t.overallDegree,
+        scale,
+        Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)),
+      );
     const forms: readonly Pick<FittedForm, 'form' | 'power' | 'log' | 'coefficient'>[] = exact[n]?.forms ?? fitted[n]?.forms ?? [];
     if (!forms.length) continue;
     const vertices = forms.map(f => ('interaction' in f.form ? setup.vertices[f.form.interaction] : formVertex(f.form)));
     ladder.addCounterterm(n, L =>
-      forms.map((f, j): ScaledVertex => ({ vertex: vertices[j], strength: scaled(f.coefficient, -(L ** f.power) * Math.log(L / scale) ** f.log) })),
+      forms.map((f, j): ScaledVertex => ({
+        vertex: vertices[j],
+        strength: scaled(f.coefficient, -(L ** f.power) * Math.log(L / scale) ** f.log),
+      })),
     );
   }
 }
@@ -124,11 +163,25 @@ function denseStrengths(
   atUnit: readonly (FittedOverall | null)[],
   shouldStop: () => boolean,
 ): StrengthLaw[] {
-  const wanted = setup.list.terms.flatMap((_, n) => (dense[n] ? minimalCounterterms(setup, n).map(c => ({ n, scale: c.spec.scheme.at })) : []));
+  const wanted = setup.list.terms.flatMap((_, n) =>
+    dense[n] ? minimalCounterterms(setup, n).map(c => ({ n, scale: c.spec.scheme.at })) : [],
+  );
   return [...new Set(wanted.map(w => w.scale))].flatMap(scale => {
     const fitted = [...atUnit];
-    if (scale !== 1) fitDense(setup, symbolic, ladder, dense, symbolic.contacts ? contactOverall(symbolic.contacts, scale) : [], fitted, scale, shouldStop);
-    return [...new Set(wanted.filter(w => w.scale === scale).map(w => w.n))].flatMap(n => (fitted[n] ? fittedStrengths(setup, n, fitted[n]!, scale) : []));
+    if (scale !== 1)
+      fitDense(
+        setup,
+        symbolic,
+        ladder,
+        dense,
+        symbolic.contacts ? contactOverall(symbolic.contacts, scale) : [],
+        fitted,
+        scale,
+        shouldStop,
+      );
+    return [...new Set(wanted.filter(w => w.scale === scale).map(w => w.n))].flatMap(n =>
+      fitted[n] ? fittedStrengths(setup, n, fitted[n], scale) : [],
+    );
   });
 }
 

@@ -25,7 +25,15 @@ export interface SymbolicVerdicts {
   readonly remarks: readonly Remark[];
 }
 
-const UNDECIDED: SymbolicVerdict = { verdict: 'undecided', conditional: false, power: null, log: null, contact: false, overallDegree: NaN, tooSoft: false };
+const UNDECIDED: SymbolicVerdict = {
+  verdict: 'undecided',
+  conditional: false,
+  power: null,
+  log: null,
+  contact: false,
+  overallDegree: NaN,
+  tooSoft: false,
+};
 
 export function symbolicVerdicts(setup: Setup): SymbolicVerdicts {
   const remarks: Remark[] = [];
@@ -38,7 +46,8 @@ export function symbolicVerdicts(setup: Setup): SymbolicVerdicts {
     const behaviours = setup.behaviours.map(b => b ?? { right: [], left: [], both: [], diagonal: [] });
     const count = countPowers(term, behaviours, setup.kinematics.dimension, setup.fall);
     const fallWithCutoff = setup.fall + setup.regulator.strength;
-    const tooSoft = Number.isFinite(fallWithCutoff) && countPowers(term, behaviours, setup.kinematics.dimension, fallWithCutoff).degree >= 0;
+    const tooSoft =
+      Number.isFinite(fallWithCutoff) && countPowers(term, behaviours, setup.kinematics.dimension, fallWithCutoff).degree >= 0;
     const shared = { overallDegree: count.overall, tooSoft };
     const contact = exact?.[n];
     if (contact) {
@@ -48,14 +57,25 @@ export function symbolicVerdicts(setup: Setup): SymbolicVerdicts {
     if (count.degree < 0) return { ...shared, verdict: 'converges', conditional: false, power: 0, log: 0, contact: false };
     const oscillates = count.oscillates && setup.regulator.shape.kind === 'sharp';
     if (count.oscillates && !oscillates) return { ...shared, verdict: 'converges', conditional: false, power: 0, log: 0, contact: false };
-    return { ...shared, verdict: oscillates ? 'oscillates' : 'diverges', conditional: false, power: count.degree, log: count.log, contact: false };
+    return {
+      ...shared,
+      verdict: oscillates ? 'oscillates' : 'diverges',
+      conditional: false,
+      power: count.degree,
+      log: count.log,
+      contact: false,
+    };
   });
   setup.list.terms.forEach((term, n) => {
     if (terms[n].verdict === 'undecided') remarks.push({ code: 'undecided', subject: term.name, message: unknownMessage(setup, n) });
     else if (terms[n].tooSoft) {
       const shape = setup.spec.cutoff.shape;
       const name = shape.kind === 'sharp' ? 'sharp' : `${shape.kind}(${shape.n})`;
-      remarks.push({ code: 'cutoff-too-soft', subject: term.name, message: `The cutoff ${name} falls off too slowly to make ${term.name} finite; take a larger number in its parentheses, or a gaussian or sharp one.` });
+      remarks.push({
+        code: 'cutoff-too-soft',
+        subject: term.name,
+        message: `The cutoff ${name} falls off too slowly to make ${term.name} finite; take a larger number in its parentheses, or a gaussian or sharp one.`,
+      });
     }
   });
   return { terms, contacts, remarks };
@@ -71,7 +91,14 @@ function unknownMessage(setup: Setup, n: number): string {
 function contactsOf(setup: Setup): ContactSetting | null {
   if (setup.fall === null || !Number.isInteger(setup.fall)) return null;
   try {
-    return contactSetting(setup.list, setup.vertices.map(v => v.contact), setup.kinematics, setup.regulator, setup.momentum, setup.size);
+    return contactSetting(
+      setup.list,
+      setup.vertices.map(v => v.contact),
+      setup.kinematics,
+      setup.regulator,
+      setup.momentum,
+      setup.size,
+    );
   } catch (error) {
     if (error instanceof NoExpansion) return null;
     throw error;
