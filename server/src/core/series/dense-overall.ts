@@ -48,7 +48,9 @@ export function fitOverall(setup: Setup, ladder: Ladder, n: number, degree: numb
     // Nothing there: below its own error, or below the rounding of what outgrows it.
     const samples = byGrowth[j].filter(s => Math.max(...s.values.map(modulus)) > 4 * s.error);
     if (!samples.length || reach[j] < 1e-10 * strongest) return;
-    const fitted = asPolynomial(setup, ladder, growth, samples, degree) ?? asKernel(setup, ladder, growth, byGrowth[j], n);
+    const fitted =
+      asPolynomial(setup, ladder, growth, samples, degree, dimensionPrice(setup, n, byGrowth[j])) ??
+      asKernel(setup, ladder, growth, byGrowth[j], n);
     if (fitted) forms.push(...fitted);
     else local = false;
   });
@@ -111,74 +113,137 @@ const MISFIT = 2e-4;
 /** Parts and forms below this share of the largest of their growth are rounding that the error estimate has missed. */
 const NEGLIGIBLE = 1e-6;
 
-/** Σ c p^a k^b E^e: the powers of contacts as they stand, the others and E up to the dimension that is left. */
-function asPolynomial(setup: Setup, ladder: Ladder, growth: Growth, samples: readonly PartSample[], degree: number): FittedForm[] | null {
+/** How many powers of the cutoff the powers a of p and b of k cost. */
+type Price = (a: number, b: number) => number;
+
+/**
+ * Contacts of one degree each: every power at the ends beyond the fewest possible is one less for the loops. Otherwise only what no contact
+ * brings along is known to cost anything.
+ */
+function dimensionPrice(setup: Setup, n: number, samples: readonly PartSample[]): Price {
+  const l = partialWave(setup.spec.wave);
+  const contacts = setup.list.terms[n].exponents.flatMap((m, i) => (m > 0 && setup.vertices[i].contact ? [setup.vertices[i].contact] : []));
+  const ends = samples.map(s => [s.left, s.right].reduce((sum, end) => sum + ('power' in end ? end.power : l), 0));
+  const fewest = Math.min(...ends);
+  if (contacts.every(terms => new Set(terms.map(t => t.a + t.b)).size === 1)) return (a, b) => a + b - fewest;
+  const powers = new Set(contacts.flat().flatMap(t => [t.a, t.b]));
+  const single = (power: number) => (powers.has(power) ? 0 : power - l);
+  return (a, b) => single(a) + single(b);
+}
+
+/**
+ * Σ c p^a k^b E^e. Where only contacts stand at the ends their powers are known, and each coefficient is a polynomial in E. Where other kernels
+ * do too, only the whole is local (what one part leaves, the counterterm in another takes away): then the whole is fitted in p, k and E.
+ */
+function asPolynomial(
+  setup: Setup,
+  ladder: Ladder,
+  growth: Growth,
+  samples: readonly PartSample[],
+  degree: number,
+  price: Price,
+): FittedForm[] | null {
   const room = degree - growth.power + 1e-9;
   const unit = Math.max(...ladder.externals.map(Math.abs));
   const energyUnit = Math.abs(setup.kinematics.energy(unit)) || 1;
-  const total = new Map<string, { a: number; b: number; e: number; re: number; im: number; error: number }>();
-  for (const group of groupByContacts(samples)) {
-    const fitted = fitGroup(setup, ladder, group, room, unit, energyUnit, NEGLIGIBLE * largestOf(ladder, samples));
-    if (!fitted) return null;
-    for (const t of fitted) {
-      const key = `${t.a},${t.b},${t.e}`;
-      const known = total.get(key) ?? { a: t.a, b: t.b, e: t.e, re: 0, im: 0, error: 0 };
-      total.set(key, { ...known, re: known.re + t.c.re, im: known.im + t.c.im, error: known.error + t.error });
-    }
-  }
-  const inUnits = (t: { a: number; b: number; e: number }) => unit ** (t.a + t.b) * energyUnit ** t.e;
-  const error = Math.max(...[...total.values()].map(t => t.error * inUnits(t)));
-  const largest = Math.max(...[...total.values()].map(t => Math.hypot(t.re, t.im) * inUnits(t)));
-  const kept = [...total.values()].filter(
-    t => Math.hypot(t.re, t.im) * inUnits(t) > Math.max(3 * t.error * inUnits(t), NEGLIGIBLE * largest),
-  );
-  const ordered = kept.sort((s, t) => s.e - t.e || s.a + s.b - t.a - t.b || t.a - s.a);
-  const terms = symmetrised(
-    ordered.map(t => ({ a: t.a, b: t.b, e: t.e, c: clean({ re: t.re, im: t.im }, t.error) })),
-    t => error / inUnits(t),
-  );
-  return groupIntoForms(terms).map(f => {
+  const fitted = samples.every(s => 'power' in s.left && 'power' in s.right)
+    ? inEnergy(setup, ladder, samples, room, price, energyUnit, NEGLIGIBLE * largestOf(ladder, samples))
+    : inMomenta(setup, ladder, samples, room, price, unit, energyUnit);
+  if (!fitted) return null;
+  const inUnits = (t: LocalCoefficient) => unit ** (t.a + t.b) * energyUnit ** t.e;
+  const largest = Math.max(...fitted.map(t => modulus(t.c) * inUnits(t)));
+  const kept = fitted.filter(t => modulus(t.c) > 3 * t.error && modulus(t.c) * inUnits(t) > NEGLIGIBLE * largest);
+  const ordered = kept.map(t => ({ ...t, c: clean(t.c, t.error) })).sort((s, t) => s.e - t.e || s.a + s.b - t.a - t.b || t.a - s.a);
+  return groupIntoForms(symmetrised(ordered)).map(f => {
     const { a, b, e } = f.form.terms[0];
-    return { form: f.form, coefficient: f.coefficient, ...growth, uncertainty: total.get(`${a},${b},${e}`)?.error ?? error };
+    return {
+      form: f.form,
+      coefficient: f.coefficient,
+      ...growth,
+      uncertainty: fitted.find(t => t.a === a && t.b === b && t.e === e)!.error,
+    };
   });
-}
-
-/** Samples that differ only in the external momenta of ends that are no contacts. */
-function groupByContacts(samples: readonly PartSample[]): PartSample[][] {
-  const groups = new Map<string, PartSample[]>();
-  for (const s of samples) {
-    const key = [s.left, s.right].map(end => ('power' in end ? `p${end.power}` : 'm')).join();
-    groups.set(key, [...(groups.get(key) ?? []), s]);
-  }
-  return [...groups.values()];
 }
 
 type FittedTerm = LocalCoefficient & { readonly error: number };
 
-function fitGroup(
+/** Powers of E that the dimension left over has room for. */
+function energyPowers(setup: Setup, ladder: Ladder, room: number): number[] {
+  return ladder.energies.map((_, e) => e).filter(e => e * setup.fall! <= room);
+}
+
+/** Each part p^a k^b by itself, a polynomial in E. */
+function inEnergy(
   setup: Setup,
   ladder: Ladder,
-  group: readonly PartSample[],
+  samples: readonly PartSample[],
   room: number,
-  unit: number,
+  price: Price,
   energyUnit: number,
   negligible: number,
 ): FittedTerm[] | null {
+  const terms: FittedTerm[] = [];
+  for (const s of samples) {
+    if (!('power' in s.left) || !('power' in s.right)) return null;
+    const [a, b] = [s.left.power, s.right.power];
+    const powers = energyPowers(setup, ladder, room - price(a, b));
+    const rows = ladder.energies.map(E => powers.map(e => ((E.re || E.im) / energyUnit) ** e));
+    const found = fitLinear(rows, s.values, s.error, negligible / (endSize(ladder, s.left) * endSize(ladder, s.right)));
+    if (!found) return null;
+    powers.forEach((e, j) => {
+      const scale = energyUnit ** e;
+      terms.push({ a, b, e, c: { re: found.re[j] / scale, im: found.im[j] / scale }, error: found.error / scale });
+    });
+  }
+  return terms;
+}
+
+/** The whole amplitude at every pair of external momenta. */
+function inMomenta(
+  setup: Setup,
+  ladder: Ladder,
+  samples: readonly PartSample[],
+  room: number,
+  price: Price,
+  unit: number,
+  energyUnit: number,
+): FittedTerm[] | null {
   const l = partialWave(setup.spec.wave);
   const step = setup.kinematics.signed ? 1 : 2;
-  const powersOf = (end: ChainEnd): number[] =>
-    'power' in end ? [0] : Array.from({ length: Math.floor(room / step) + 1 }, (_, j) => j * step);
-  const basis: { i: number; j: number; e: number }[] = [];
-  for (let e = 0; e * setup.fall! <= room && e < ladder.energies.length; e++) {
-    for (const i of powersOf(group[0].left))
-      for (const j of powersOf(group[0].right)) if (i + j + e * setup.fall! <= room) basis.push({ i, j, e });
-  }
-  const value = (end: ChainEnd, power: number) => ('power' in end ? 1 : (ladder.externals[end.momentum] / unit) ** (l + power));
-  const rows = group.flatMap(s =>
-    ladder.energies.map(E => basis.map(t => value(s.left, t.i) * value(s.right, t.j) * ((E.re || E.im) / energyUnit) ** t.e)),
+  const contacts = new Set(samples.flatMap(s => [s.left, s.right]).flatMap(end => ('power' in end ? [end.power] : [])));
+  const powers = [...new Set([...contacts, ...Array.from({ length: Math.floor(room / step) + 1 }, (_, j) => l + j * step)])].sort(
+    (x, y) => x - y,
   );
-  const values = group.flatMap(s => s.values);
+  const basis = energyPowers(setup, ladder, room).flatMap(e =>
+    powers.flatMap(a => powers.map(b => ({ a, b, e }))).filter(t => price(t.a, t.b) + t.e * setup.fall! <= room),
+  );
+  const rows: number[][] = [];
+  const values: Complex[] = [];
+  ladder.energies.forEach((E, e) =>
+    ladder.externals.forEach((p, row) =>
+      ladder.externals.forEach((k, column) => {
+        rows.push(basis.map(t => (p / unit) ** t.a * (k / unit) ** t.b * ((E.re || E.im) / energyUnit) ** t.e));
+        values.push(wholeSample(ladder, samples, e, row, column));
+      }),
+    ),
+  );
   if (rows.length < basis.length) return null;
+  const error = Math.max(...samples.map(s => s.error * endSize(ladder, s.left) * endSize(ladder, s.right)));
+  const found = fitLinear(rows, values, error, 0);
+  if (!found) return null;
+  return basis.map((t, j) => {
+    const scale = unit ** (t.a + t.b) * energyUnit ** t.e;
+    return { ...t, c: { re: found.re[j] / scale, im: found.im[j] / scale }, error: found.error / scale };
+  });
+}
+
+/** Least squares with its misfit; null where the misfit is more than errors explain. */
+function fitLinear(
+  rows: readonly (readonly number[])[],
+  values: readonly Complex[],
+  error: number,
+  negligible: number,
+): { re: number[]; im: number[]; error: number } | null {
   const re = leastSquares(
     rows,
     values.map(v => v.re),
@@ -189,26 +254,17 @@ function fitGroup(
   );
   if (!re || !im) return null;
   const misfit = Math.max(...rows.map((r, j) => modulus({ re: values[j].re - dot(r, re), im: values[j].im - dot(r, im) })));
-  const error = Math.max(...group.map(s => s.error));
-  const ends = endSize(ladder, group[0].left) * endSize(ladder, group[0].right);
-  if (misfit > MISFIT * Math.max(...values.map(modulus)) + 3 * error + negligible / ends) return null;
-  return basis.map((t, at) => {
-    const a = 'power' in group[0].left ? group[0].left.power : l + t.i;
-    const b = 'power' in group[0].right ? group[0].right.power : l + t.j;
-    // Only the powers that were fitted were in units of `unit`.
-    const scale = unit ** (('power' in group[0].left ? 0 : a) + ('power' in group[0].right ? 0 : b)) * energyUnit ** t.e;
-    return { a, b, e: t.e, c: { re: re[at] / scale, im: im[at] / scale }, error: (misfit + error) / scale };
-  });
+  return misfit > MISFIT * Math.max(...values.map(modulus)) + 3 * error + negligible ? null : { re, im, error: misfit + error };
 }
 
 /** Partners p^a k^b and p^b k^a made equal (or opposite) where the fit leaves them so within its error. */
-function symmetrised(terms: readonly LocalCoefficient[], errorOf: (t: LocalCoefficient) => number): LocalCoefficient[] {
+function symmetrised(terms: readonly FittedTerm[]): LocalCoefficient[] {
   return terms.map(t => {
     const mirror = terms.find(u => u.a === t.b && u.b === t.a && u.e === t.e);
     if (!mirror || mirror === t) return t;
     for (const sign of [1, -1]) {
       const gap = Math.hypot(t.c.re - sign * mirror.c.re, t.c.im - sign * mirror.c.im);
-      if (gap < Math.max(20 * errorOf(t), 1e-3 * modulus(t.c)))
+      if (gap < Math.max(20 * t.error, 1e-3 * modulus(t.c)))
         return { ...t, c: { re: (t.c.re + sign * mirror.c.re) / 2, im: (t.c.im + sign * mirror.c.im) / 2 } };
     }
     return t;
