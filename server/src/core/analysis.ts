@@ -170,9 +170,10 @@ function sums(
 function solve(setup: Setup, evaluation: Evaluation | null, points: readonly OnShellPoint[], options: AnalysisOptions, stop: () => void) {
   const { spec } = setup;
   const momenta = [...points, ...(evaluation?.points ?? [])].map(p => p.p);
-  const grid = momenta.length ? new CutoffGrid(setup, spec.cutoff.value, momenta, 12) : null;
-  const parts = grid && evaluation ? potentialParts(grid, evaluation.at.strengths) : [];
   const wanted = options.full || spec.expectations.some(e => e.kind === 'observable');
+  // Eigenvalues alone are wanted to fewer digits.
+  const grid = momenta.length ? new CutoffGrid(setup, spec.cutoff.value, momenta, wanted ? 12 : 8) : null;
+  const parts = grid && evaluation ? potentialParts(grid, evaluation.at.strengths) : [];
   const memo = <T>(compute: (point: OnShellPoint) => T) => {
     const known = new Map<OnShellPoint, T>();
     return (point: OnShellPoint | null): T | null => {

@@ -5,13 +5,14 @@ import { divide, multiply } from './solve';
 export type Operator = (x: { re: Float64Array; im: Float64Array }, y: { re: Float64Array; im: Float64Array }) => void;
 
 /**
- * Eigenvalues of largest modulus of an operator on n points, by Arnoldi's method with full orthogonalisation: `steps` products. Those are
- * returned whose residual is below `tolerance` of the largest, by falling modulus; the largest always is, with its residual.
+ * Eigenvalues of largest modulus of an operator on n points, by Arnoldi's method with full orthogonalisation: `steps` products. Of the
+ * `wanted` largest those are returned whose residual is below `tolerance` of the largest, by falling modulus; the largest always is, with its residual.
  */
 export function largestEigenvalues(
   operator: Operator,
   n: number,
   steps: number,
+  wanted: number,
   tolerance: number,
 ): { values: Complex[]; residual: number } {
   const m = Math.min(steps, n);
@@ -39,7 +40,9 @@ export function largestEigenvalues(
   }
   const matrix = h.slice(0, size).map(row => row.slice(0, size));
   const closing = size < m || m === n ? 0 : h[size][size - 1].re;
-  const values = hessenbergEigenvalues(matrix).sort((x, y) => modulus(y) - modulus(x));
+  const values = hessenbergEigenvalues(matrix)
+    .sort((x, y) => modulus(y) - modulus(x))
+    .slice(0, wanted);
   const residuals = values.map(value => closing * lastComponent(matrix, value));
   const scale = modulus(values[0] ?? { re: 0, im: 0 });
   return { values: values.filter((_, j) => j === 0 || residuals[j] <= tolerance * scale), residual: residuals[0] ?? 0 };
@@ -82,7 +85,7 @@ function lastComponent(matrix: readonly (readonly Complex[])[], value: Complex):
   const n = matrix.length;
   const shift = 1e-10 * (modulus(value) || 1);
   let x: Complex[] = Array.from({ length: n }, (_, j) => ({ re: 1, im: 0.1 * j }));
-  for (let round = 0; round < 3; round++) {
+  for (let round = 0; round < 2; round++) {
     x = solveDense(
       matrix.map((row, i) => row.map((c, j) => (i === j ? { re: c.re - value.re - shift, im: c.im - value.im } : c))),
       x,

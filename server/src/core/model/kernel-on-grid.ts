@@ -59,6 +59,8 @@ interface SubRule {
 
 const POINTS = 10;
 const DEEPEST = 32;
+/** Beyond this distance (in half panels from the middle) a singularity no longer hurts the panel's own rule. */
+const NEAR = 2;
 
 function correctRow(
   element: MatrixElement,
@@ -73,7 +75,7 @@ function correctRow(
     const half = (panel.to - panel.from) / 2;
     const middle = (panel.to + panel.from) / 2;
     const t = (p - middle) / half;
-    if (Math.abs(t) > 3 || 2 * half <= scale) continue;
+    if (Math.abs(t) > NEAR || 2 * half <= scale) continue;
     const rule = subRule(panel.count, t, Math.max(2 ** -DEEPEST, scale / half));
     const k = rule.x.map(x => middle + half * x);
     const v = { re: new Float64Array(k.length), im: new Float64Array(k.length) };
@@ -93,13 +95,18 @@ function collect(rule: SubRule, v: Float64Array, panel: Panel, weights: Float64A
   for (let j = 0; j < m; j++) row[panel.start + j] = (sum[j] * half) / weights[panel.start + j];
 }
 
-const rules = new Map<string, SubRule>();
+/** By node count, then depth of refinement, then place; kept small, since external momenta bring in places of their own. */
+const rules = new Map<number, Map<number, SubRule>>();
+const KEPT = 6000;
 
 /** Intervals that start with `smallest` at t (or at the end next to it) and double away from it. */
 function subRule(nodes: number, t: number, smallest: number): SubRule {
   const finest = 2 ** Math.floor(Math.log2(Math.min(1, smallest)));
-  const key = `${nodes}/${t.toFixed(9)}/${finest}`;
-  const known = rules.get(key);
+  const key = nodes * 64 - Math.log2(finest);
+  const places = rules.get(key) ?? new Map<number, SubRule>();
+  rules.set(key, places);
+  const place = Math.round(t * 1e9);
+  const known = places.get(place);
   if (known) return known;
   const breaks = new Set<number>([-1, 1]);
   const at = Math.min(1, Math.max(-1, t));
@@ -119,8 +126,8 @@ function subRule(nodes: number, t: number, smallest: number): SubRule {
     }
   }
   const rule = { x, weights, share: lagrange(gaussLegendre(nodes).nodes, x) };
-  if (rules.size > 4000) rules.clear();
-  rules.set(key, rule);
+  if (places.size > KEPT) places.clear();
+  places.set(place, rule);
   return rule;
 }
 

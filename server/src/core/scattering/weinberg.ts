@@ -4,7 +4,7 @@ import type { LoopWeights } from '../series/loop-weights';
 import type { PotentialMatrix } from './potential';
 
 /** Products with the kernel; it is compact, so its large eigenvalues are found within a few. */
-const STEPS = 24;
+const STEPS = 20;
 /** At most so many are reported. */
 const REPORTED = 6;
 
@@ -44,8 +44,9 @@ export function weinbergEigenvalues(potential: PotentialMatrix, problem: LoopWei
     },
     size,
     STEPS,
+    REPORTED,
     1e-6,
   );
   const largest = Math.hypot(found.values[0]?.re ?? 0, found.values[0]?.im ?? 0);
-  return { values: found.values.filter(v => Math.hypot(v.re, v.im) > 1e-8 * largest).slice(0, REPORTED), residual: found.residual };
+  return { values: found.values.filter(v => Math.hypot(v.re, v.im) > 1e-8 * largest), residual: found.residual };
 }

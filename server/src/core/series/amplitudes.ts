@@ -52,7 +52,8 @@ export function gridWishes(setup: Setup, cutoff: number, momenta: readonly numbe
   const external = Math.max(...momenta.map(Math.abs));
   const narrowest = Math.min(Infinity, ...scales, ...(length > 0 ? [4 / length] : []));
   return {
-    smallest: Math.min(...momenta.map(Math.abs).filter(p => p > 0), narrowest),
+    // A pole at p leaves something smooth behind on a panel a few times as wide.
+    smallest: Math.min(3 * Math.min(...momenta.map(Math.abs).filter(p => p > 0)), narrowest),
     external: length > 0 ? Infinity : external,
     kernelScale: narrowest,
     edgeWidth: Math.max(narrowest, cutoff / 8),

@@ -1,11 +1,11 @@
 import { contactChain, type Grid } from './contact-chain';
 import type { ContactSetting } from './contact-divergences';
-import type { Ladder } from './ladder';
+import type { BareRun } from './ladder';
 import { loopMoments } from './loop-moments';
 
-/** The exact bare contact monomials at the ladder's first energy; null for monomials that hold another kernel. */
-export function contactsOnLadder(contacts: ContactSetting, ladder: Ladder): (Grid | null)[] {
-  const E = ladder.energies[0];
+/** The exact bare contact monomials at the energy of the run; null for monomials that hold another kernel. */
+export function contactsOnLadder(contacts: ContactSetting, run: BareRun): (Grid | null)[] {
+  const E = run.energy;
   const point = { E, moments: loopMoments(contacts.kinematics, contacts.regulator, contacts.ring, E, 2 * (contacts.size - 1)) };
   return contactChain(contacts.list, contacts.vertices, [point], contacts.ring, contacts.size, null).map(grids => grids && grids[0]);
 }
@@ -17,11 +17,11 @@ const AGREEMENT = 1e-8;
  * The exact Laurent polynomial of monomial n against the recursion on a grid, at every rung and pair of external momenta: two calculations
  * that share no formula.
  */
-export function contactAgrees(contacts: ContactSetting, exact: Grid, ladder: Ladder, n: number): boolean {
-  return ladder.externals.every((p, row) =>
-    ladder.externals.every((k, column) => {
-      const numbers = ladder.values(n, 0, row, column);
-      return ladder.cutoffs.every((L, j) => {
+export function contactAgrees(contacts: ContactSetting, exact: Grid, cutoffs: readonly number[], run: BareRun, n: number): boolean {
+  return run.externals.every((p, row) =>
+    run.externals.every((k, column) => {
+      const numbers = run.values(n, row, column);
+      return cutoffs.every((L, j) => {
         const sum = laurentValue(contacts, exact, p, k, L);
         const gap = Math.hypot(sum.re - numbers[j].re, sum.im - numbers[j].im);
         return gap <= AGREEMENT * Math.max(sum.size, Math.hypot(numbers[j].re, numbers[j].im));

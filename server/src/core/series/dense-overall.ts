@@ -2,7 +2,7 @@ import type { Complex } from '../algebra/expression';
 import { leastSquares } from '../linear/solve';
 import { growthFit, type Growth } from './growth-fit';
 import { groupIntoForms, type LocalCoefficient, type LocalForm } from './forms';
-import type { AmplitudePart, ChainEnd, Ladder } from './ladder';
+import type { AmplitudePart, ChainEnd, FittingRun } from './ladder';
 import { partialWave, type Setup } from './setup';
 import { vertexValue } from './subtraction';
 
@@ -30,17 +30,17 @@ interface PartSample {
 }
 
 /**
- * What grows in R_n (nested divergences already subtracted on the ladder) as forms with coefficients, logarithms as ln(L/scale). The growth is
+ * What grows in R_n (nested divergences already subtracted on the run) as forms with coefficients, logarithms as ln(L/scale). The growth is
  * fitted in each part of the amplitude; contacts at its ends give their powers of p and k as they stand, other kernels a polynomial of the
  * degree that power counting leaves, or the kernel itself.
  */
-export function fitOverall(setup: Setup, ladder: Ladder, n: number, degree: number, scale: number, logs: number): FittedOverall {
-  const { growing, falling } = candidates(setup, degree, logs, ladder.cutoffs.length);
-  const fit = growthFit(ladder.cutoffs, growing, falling, scale);
+export function fitOverall(setup: Setup, run: FittingRun, n: number, degree: number, scale: number, logs: number): FittedOverall {
+  const { growing, falling } = candidates(setup, degree, logs, run.cutoffs.length);
+  const fit = growthFit(run.cutoffs, growing, falling, scale);
   if (!fit) return { forms: [], local: false };
-  const byGrowth = sampleGrowth(ladder, n, growing, fit);
-  const last = ladder.cutoffs[ladder.cutoffs.length - 1];
-  const reach = growing.map((g, j) => largestOf(ladder, byGrowth[j]) * last ** g.power * Math.log(last) ** g.log);
+  const byGrowth = sampleGrowth(run, n, growing, fit);
+  const last = run.cutoffs[run.cutoffs.length - 1];
+  const reach = growing.map((g, j) => largestOf(run, byGrowth[j]) * last ** g.power * Math.log(last) ** g.log);
   const strongest = Math.max(...reach);
   const forms: FittedForm[] = [];
   let local = true;
@@ -49,8 +49,8 @@ export function fitOverall(setup: Setup, ladder: Ladder, n: number, degree: numb
     const samples = byGrowth[j].filter(s => Math.max(...s.values.map(modulus)) > 4 * s.error);
     if (!samples.length || reach[j] < 1e-10 * strongest) return;
     const fitted =
-      asPolynomial(setup, ladder, growth, samples, degree, dimensionPrice(setup, n, byGrowth[j])) ??
-      asKernel(setup, ladder, growth, byGrowth[j], n);
+      asPolynomial(setup, run, growth, samples, degree, dimensionPrice(setup, n, byGrowth[j])) ??
+      asKernel(setup, run, growth, byGrowth[j], n);
     if (fitted) forms.push(...fitted);
     else local = false;
   });
@@ -74,18 +74,18 @@ function candidates(setup: Setup, degree: number, logs: number, rungs: number): 
 }
 
 function sampleGrowth(
-  ladder: Ladder,
+  run: FittingRun,
   n: number,
   growing: readonly Growth[],
   fit: NonNullable<ReturnType<typeof growthFit>>,
 ): PartSample[][] {
-  const parts = ladder.energies.map((_, e) => ladder.parts(n, e));
+  const parts = run.energies.map((_, e) => run.parts(n, e));
   const sameEnds = (x: AmplitudePart, y: AmplitudePart) => endKey(x.left) === endKey(y.left) && endKey(x.right) === endKey(y.right);
   const fits = parts[0].map(part =>
-    ladder.energies.map((_, e) => {
+    run.energies.map((_, e) => {
       const values = parts[e].find(other => sameEnds(part, other))?.values ?? [];
-      const re = fit(ladder.cutoffs.map((__, j) => values[j]?.re ?? 0));
-      const im = fit(ladder.cutoffs.map((__, j) => values[j]?.im ?? 0));
+      const re = fit(run.cutoffs.map((__, j) => values[j]?.re ?? 0));
+      const im = fit(run.cutoffs.map((__, j) => values[j]?.im ?? 0));
       return { re, im };
     }),
   );
@@ -102,11 +102,11 @@ function sampleGrowth(
 const endKey = (end: ChainEnd): string => ('power' in end ? `p${end.power}` : `m${end.momentum}`);
 
 /** Size of a sample in the whole amplitude, momenta in units of the largest external one. */
-function largestOf(ladder: Ladder, samples: readonly PartSample[]): number {
-  return Math.max(0, ...samples.map(s => Math.max(...s.values.map(modulus)) * endSize(ladder, s.left) * endSize(ladder, s.right)));
+function largestOf(run: FittingRun, samples: readonly PartSample[]): number {
+  return Math.max(0, ...samples.map(s => Math.max(...s.values.map(modulus)) * endSize(run, s.left) * endSize(run, s.right)));
 }
 
-const endSize = (ladder: Ladder, end: ChainEnd): number => ('power' in end ? Math.max(...ladder.externals.map(Math.abs)) ** end.power : 1);
+const endSize = (run: FittingRun, end: ChainEnd): number => ('power' in end ? Math.max(...run.externals.map(Math.abs)) ** end.power : 1);
 
 /** Worst misfit that still counts as the form, relative to the largest sample. */
 const MISFIT = 2e-4;
@@ -137,18 +137,18 @@ function dimensionPrice(setup: Setup, n: number, samples: readonly PartSample[])
  */
 function asPolynomial(
   setup: Setup,
-  ladder: Ladder,
+  run: FittingRun,
   growth: Growth,
   samples: readonly PartSample[],
   degree: number,
   price: Price,
 ): FittedForm[] | null {
   const room = degree - growth.power + 1e-9;
-  const unit = Math.max(...ladder.externals.map(Math.abs));
+  const unit = Math.max(...run.externals.map(Math.abs));
   const energyUnit = Math.abs(setup.kinematics.energy(unit)) || 1;
   const fitted = samples.every(s => 'power' in s.left && 'power' in s.right)
-    ? inEnergy(setup, ladder, samples, room, price, energyUnit, NEGLIGIBLE * largestOf(ladder, samples))
-    : inMomenta(setup, ladder, samples, room, price, unit, energyUnit);
+    ? inEnergy(setup, run, samples, room, price, energyUnit, NEGLIGIBLE * largestOf(run, samples))
+    : inMomenta(setup, run, samples, room, price, unit, energyUnit);
   if (!fitted) return null;
   const inUnits = (t: LocalCoefficient) => unit ** (t.a + t.b) * energyUnit ** t.e;
   const largest = Math.max(...fitted.map(t => modulus(t.c) * inUnits(t)));
@@ -168,14 +168,14 @@ function asPolynomial(
 type FittedTerm = LocalCoefficient & { readonly error: number };
 
 /** Powers of E that the dimension left over has room for. */
-function energyPowers(setup: Setup, ladder: Ladder, room: number): number[] {
-  return ladder.energies.map((_, e) => e).filter(e => e * setup.fall! <= room);
+function energyPowers(setup: Setup, run: FittingRun, room: number): number[] {
+  return run.energies.map((_, e) => e).filter(e => e * setup.fall! <= room);
 }
 
 /** Each part p^a k^b by itself, a polynomial in E. */
 function inEnergy(
   setup: Setup,
-  ladder: Ladder,
+  run: FittingRun,
   samples: readonly PartSample[],
   room: number,
   price: Price,
@@ -186,9 +186,9 @@ function inEnergy(
   for (const s of samples) {
     if (!('power' in s.left) || !('power' in s.right)) return null;
     const [a, b] = [s.left.power, s.right.power];
-    const powers = energyPowers(setup, ladder, room - price(a, b));
-    const rows = ladder.energies.map(E => powers.map(e => ((E.re || E.im) / energyUnit) ** e));
-    const found = fitLinear(rows, s.values, s.error, negligible / (endSize(ladder, s.left) * endSize(ladder, s.right)));
+    const powers = energyPowers(setup, run, room - price(a, b));
+    const rows = run.energies.map(E => powers.map(e => ((E.re || E.im) / energyUnit) ** e));
+    const found = fitLinear(rows, s.values, s.error, negligible / (endSize(run, s.left) * endSize(run, s.right)));
     if (!found) return null;
     powers.forEach((e, j) => {
       const scale = energyUnit ** e;
@@ -201,7 +201,7 @@ function inEnergy(
 /** The whole amplitude at every pair of external momenta. */
 function inMomenta(
   setup: Setup,
-  ladder: Ladder,
+  run: FittingRun,
   samples: readonly PartSample[],
   room: number,
   price: Price,
@@ -214,21 +214,21 @@ function inMomenta(
   const powers = [...new Set([...contacts, ...Array.from({ length: Math.floor(room / step) + 1 }, (_, j) => l + j * step)])].sort(
     (x, y) => x - y,
   );
-  const basis = energyPowers(setup, ladder, room).flatMap(e =>
+  const basis = energyPowers(setup, run, room).flatMap(e =>
     powers.flatMap(a => powers.map(b => ({ a, b, e }))).filter(t => price(t.a, t.b) + t.e * setup.fall! <= room),
   );
   const rows: number[][] = [];
   const values: Complex[] = [];
-  ladder.energies.forEach((E, e) =>
-    ladder.externals.forEach((p, row) =>
-      ladder.externals.forEach((k, column) => {
+  run.energies.forEach((E, e) =>
+    run.externals.forEach((p, row) =>
+      run.externals.forEach((k, column) => {
         rows.push(basis.map(t => (p / unit) ** t.a * (k / unit) ** t.b * ((E.re || E.im) / energyUnit) ** t.e));
-        values.push(wholeSample(ladder, samples, e, row, column));
+        values.push(wholeSample(run, samples, e, row, column));
       }),
     ),
   );
   if (rows.length < basis.length) return null;
-  const error = Math.max(...samples.map(s => s.error * endSize(ladder, s.left) * endSize(ladder, s.right)));
+  const error = Math.max(...samples.map(s => s.error * endSize(run, s.left) * endSize(run, s.right)));
   const found = fitLinear(rows, values, error, 0);
   if (!found) return null;
   return basis.map((t, j) => {
@@ -272,13 +272,11 @@ function symmetrised(terms: readonly FittedTerm[]): LocalCoefficient[] {
 }
 
 /** The whole as a multiple of the kernel of one of the interactions. */
-function asKernel(setup: Setup, ladder: Ladder, growth: Growth, samples: readonly PartSample[], n: number): FittedForm[] | null {
-  const pairs = ladder.energies.flatMap((E, e) =>
-    ladder.externals.flatMap((p, row) =>
-      ladder.externals.map((k, column) => ({ E, p, k, value: wholeSample(ladder, samples, e, row, column) })),
-    ),
+function asKernel(setup: Setup, run: FittingRun, growth: Growth, samples: readonly PartSample[], n: number): FittedForm[] | null {
+  const pairs = run.energies.flatMap((E, e) =>
+    run.externals.flatMap((p, row) => run.externals.map((k, column) => ({ E, p, k, value: wholeSample(run, samples, e, row, column) }))),
   );
-  const shift = Math.max(...samples.map(s => s.error * endSize(ladder, s.left) * endSize(ladder, s.right)));
+  const shift = Math.max(...samples.map(s => s.error * endSize(run, s.left) * endSize(run, s.right)));
   for (let i = 0; i < setup.vertices.length; i++) {
     if (setup.list.terms[n].exponents[i] === 0) continue;
     const rows = pairs.map(({ E, p, k, value }) => ({ value, kernel: vertexValue(setup.vertices[i], p, k, E.re) }));
@@ -290,6 +288,7 @@ function asKernel(setup: Setup, ladder: Ladder, growth: Growth, samples: readonl
     );
     if (misfit > MISFIT * Math.max(...rows.map(({ value }) => modulus(value))) + 3 * shift) continue;
     const error = (misfit + shift) / Math.sqrt(norm / rows.length);
+    if (Math.hypot(re, im) < 3 * error) return [];
     return [
       {
         form: { text: `of ${setup.vertices[i].name}`, interaction: i },
@@ -302,8 +301,8 @@ function asKernel(setup: Setup, ladder: Ladder, growth: Growth, samples: readonl
   return null;
 }
 
-function wholeSample(ladder: Ladder, samples: readonly PartSample[], e: number, row: number, column: number): Complex {
-  const weight = (end: ChainEnd, at: number) => ('power' in end ? ladder.externals[at] ** end.power : end.momentum === at ? 1 : 0);
+function wholeSample(run: FittingRun, samples: readonly PartSample[], e: number, row: number, column: number): Complex {
+  const weight = (end: ChainEnd, at: number) => ('power' in end ? run.externals[at] ** end.power : end.momentum === at ? 1 : 0);
   return samples.reduce(
     (sum, s) => {
       const w = weight(s.left, row) * weight(s.right, column);

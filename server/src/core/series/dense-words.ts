@@ -14,6 +14,7 @@ export interface Column {
 /** The kernels between nodes, shared by every problem (and every run) on one grid. */
 export class GridKernels {
   private readonly known = new Map<Vertex, Map<number, KernelOnGrid>>();
+  private readonly knownRows = new Map<Vertex, Map<string, Column>>();
 
   constructor(readonly grid: MomentumGrid) {}
 
@@ -24,6 +25,19 @@ export class GridKernels {
     const kernel = byEnergy.get(at) ?? kernelOnGrid(vertex.element, this.grid, vertex.ridge, E);
     byEnergy.set(at, kernel);
     return kernel;
+  }
+
+  /** V(p, k_j) for one external momentum, as it acts on values at the nodes. */
+  row(vertex: Vertex, p: number, E: number): Column {
+    const key = `${p}/${vertex.dependsOnEnergy ? E : 0}`;
+    const rows = this.knownRows.get(vertex) ?? new Map<string, Column>();
+    this.knownRows.set(vertex, rows);
+    let row = rows.get(key);
+    if (!row) {
+      const { re, im } = kernelRows(vertex.element, this.grid, Float64Array.of(p), vertex.ridge, E);
+      rows.set(key, (row = { re, im: vertex.element.real ? null : im }));
+    }
+    return row;
   }
 }
 
@@ -45,8 +59,8 @@ export class DenseOperator {
     return { re: values.re, im: vertex.element.real ? null : values.im };
   }
 
-  /** V G f for a list of functions per problem: [problem][function]. */
-  apply(vertex: Vertex, functions: readonly (readonly Column[])[]): Column[][] {
+  /** V G f for a list of functions per problem: [problem][function]; at the external momenta alone where `everywhere` is false. */
+  apply(vertex: Vertex, functions: readonly (readonly Column[])[], everywhere: boolean): Column[][] {
     const complex = !vertex.element.real || this.problems.some(p => p.E.im !== 0) || functions.some(list => list.some(f => f.im));
     const inputs = functions.map((list, at) => list.map(f => this.timesPropagator(f, at, complex)));
     const outputs = functions.map((list, at) =>
@@ -55,6 +69,12 @@ export class DenseOperator {
         im: complex ? new Float64Array(this.problems[at].points.length) : null,
       })),
     );
+    if (everywhere) this.applyBetweenNodes(vertex, inputs, outputs);
+    this.problems.forEach((problem, at) => this.addEdges(vertex, problem, at, inputs[at], outputs[at]));
+    return outputs;
+  }
+
+  private applyBetweenNodes(vertex: Vertex, inputs: readonly Column[][], outputs: readonly Column[][]): void {
     const groups = new Map<KernelOnGrid, number[]>();
     this.problems.forEach((p, at) => {
       const kernel = this.kernels.of(vertex, p.E.re);
@@ -66,8 +86,6 @@ export class DenseOperator {
         members.flatMap(at => inputs[at]),
         members.flatMap(at => outputs[at]),
       );
-    this.problems.forEach((problem, at) => this.addEdges(vertex, problem, at, inputs[at], outputs[at]));
-    return outputs;
   }
 
   private timesPropagator(f: Column, at: number, complex: boolean): Column {
@@ -93,7 +111,7 @@ export class DenseOperator {
     const edge = this.edgeOf(vertex, at);
     inputs.forEach((x, c) => {
       const y = outputs[c];
-      for (let r = 0; r < problem.externals.length; r++) addDot(edge.rows, r * nodes, x, nodes, y, nodes + r);
+      edge.rows.forEach((row, r) => addDot(row, x, nodes, y, nodes + r));
       for (let s = nodes; s < problem.g.re.length; s++) addMultiple(edge.columns[s - nodes], { re: x.re[s], im: x.im ? x.im[s] : 0 }, y);
     });
   }
@@ -103,26 +121,27 @@ export class DenseOperator {
     if (known) return known;
     const problem = this.problems[at];
     const onShell = problem.externals.slice(0, problem.g.re.length - this.kernels.grid.nodes.length);
-    const rows = kernelRows(vertex.element, this.kernels.grid, Float64Array.from(problem.externals), vertex.ridge, problem.E.re);
-    const edge = { rows: { re: rows.re, im: vertex.element.real ? null : rows.im }, columns: onShell.map(k => this.column(vertex, at, k)) };
+    const edge = {
+      rows: problem.externals.map(p => this.kernels.row(vertex, p, problem.E.re)),
+      columns: onShell.map(k => this.column(vertex, at, k)),
+    };
     this.edges[at].set(vertex, edge);
     return edge;
   }
 }
 
 interface Edge {
-  /** [row * nodes + node] */
-  readonly rows: Column;
+  readonly rows: readonly Column[];
   readonly columns: readonly Column[];
 }
 
-function addDot(rows: Column, start: number, x: Column, n: number, y: Column, at: number): void {
+function addDot(row: Column, x: Column, n: number, y: Column, at: number): void {
   let re = 0;
   let im = 0;
-  for (let j = 0; j < n; j++) re += rows.re[start + j] * x.re[j];
-  if (x.im) for (let j = 0; j < n; j++) im += rows.re[start + j] * x.im[j];
-  if (rows.im && x.im) for (let j = 0; j < n; j++) re -= rows.im[start + j] * x.im[j];
-  if (rows.im) for (let j = 0; j < n; j++) im += rows.im[start + j] * x.re[j];
+  for (let j = 0; j < n; j++) re += row.re[j] * x.re[j];
+  if (x.im) for (let j = 0; j < n; j++) im += row.re[j] * x.im[j];
+  if (row.im && x.im) for (let j = 0; j < n; j++) re -= row.im[j] * x.im[j];
+  if (row.im) for (let j = 0; j < n; j++) im += row.im[j] * x.re[j];
   y.re[at] += re;
   if (y.im) y.im[at] += im;
 }

@@ -38,7 +38,7 @@ interface Numbers {
 interface Share {
   /** Σ over orderings of kernels that are no contacts, (V G)(V G)… applied to k^power: [power]; null where there is none. */
   readonly dressed: readonly Column[] | null;
-  /** The same ending in V(·, external k): [column]; null where there is none. */
+  /** The same ending in V(·, external k): [external]; null where there is none. */
   readonly ending: readonly Column[] | null;
   /** ∫ k^b G dressed: [a * basis + b]. */
   readonly dressedMoments: Numbers | null;
@@ -87,16 +87,12 @@ export class GridChain {
   step(n: number): void {
     const { exponents } = this.list.terms[n];
     const runs = this.dense.filter(d => isPart(d.content, exponents)).map(d => ({ ...d.part, rest: this.rest(exponents, d.content) }));
-    const dressed = this.sumOfRuns(
-      runs,
-      rest => (rest < 0 ? this.states : this.problems.map((_, at) => this.shares[rest][at].dressed ?? [])),
-      null,
-    );
-    const ending = this.sumOfRuns(
-      runs,
-      rest => (rest < 0 ? null : this.problems.map((_, at) => this.shares[rest][at].ending ?? [])),
-      this.problems,
-    );
+    const goesOn = this.list.continues[n];
+    const none = this.problems.map((): Column[] => []);
+    const rests = (key: 'dressed' | 'ending') => (rest: number) => this.problems.map((_, at) => this.shares[rest][at][key] ?? []);
+    // What no longer term contains is wanted at the external momenta only.
+    const dressed = goesOn ? this.sumOfRuns(runs, rest => (rest < 0 ? this.states : rests('dressed')(rest)), null, true) : none;
+    const ending = this.sumOfRuns(runs, rest => (rest < 0 ? null : rests('ending')(rest)), this.problems, goesOn);
     this.shares[n] = this.problems.map((problem, at) => {
       const u = zeros(problem.columns.length * this.basis.length);
       for (const { content, part } of this.contacts)
@@ -110,8 +106,9 @@ export class GridChain {
     const { exponents } = this.list.terms[n];
     for (const { vertex, strength } of parts) this.place(exponents, vertex, strength);
     const newRuns = parts.filter(p => !p.vertex.contact).map(p => ({ ...p, rest: -1 }));
-    const dressed = this.sumOfRuns(newRuns, () => this.states, null);
-    const ending = this.sumOfRuns(newRuns, () => null, this.problems);
+    const goesOn = this.list.continues[n];
+    const dressed = goesOn ? this.sumOfRuns(newRuns, () => this.states, null, true) : this.problems.map((): Column[] => []);
+    const ending = this.sumOfRuns(newRuns, () => null, this.problems, goesOn);
     this.shares[n] = this.shares[n].map((share, at) => {
       const u = { re: share.u.re.slice(), im: share.u.im.slice() };
       for (const { vertex, strength } of parts) if (vertex.contact) this.addContact({ terms: vertex.contact, strength }, at, -1, u);
@@ -151,7 +148,8 @@ export class GridChain {
     const point = this.nodes + row;
     const size = this.basis.length;
     const { ending } = this.shares[n][at];
-    const sum = { re: ending?.[column].re[point] ?? 0, im: ending?.[column].im?.[point] ?? 0 };
+    const end = ending?.[column];
+    const sum = { re: end?.re[point] ?? 0, im: end?.im?.[point] ?? 0 };
     const add = (functions: readonly Column[], v: Numbers) => {
       for (let a = 0; a < size; a++) {
         const [x, y] = [functions[a].re[point], functions[a].im?.[point] ?? 0];
@@ -179,22 +177,18 @@ export class GridChain {
     runs: readonly (ScaledVertex & { rest: number })[],
     functionsOf: (rest: number) => readonly (readonly Column[])[] | null,
     ends: readonly LoopWeights[] | null,
+    everywhere: boolean,
   ): Column[][] {
     const total: Column[][] = this.problems.map(() => []);
     for (const { vertex, strength, rest } of runs) {
       const functions = functionsOf(rest);
-      const values = functions ? (functions.some(f => f.length) ? this.operator.apply(vertex, functions) : null) : null;
-      const columns = values ?? (ends && rest < 0 ? ends.map((p, at) => p.columns.map(c => this.endingColumn(vertex, at, c))) : null);
+      const values = functions ? (functions.some(f => f.length) ? this.operator.apply(vertex, functions, everywhere) : null) : null;
+      const columns = values ?? (ends && rest < 0 ? ends.map((p, at) => p.externals.map(k => this.operator.column(vertex, at, k))) : null);
       columns?.forEach((list, at) => {
         total[at] = list.map((x, c) => scaledSum(total[at][c] ?? null, x, strength));
       });
     }
     return total;
-  }
-
-  private endingColumn(vertex: Vertex, at: number, column: Ending): Column {
-    if (column.kind === 'momentum') return this.operator.column(vertex, at, column.k);
-    return { re: new Float64Array(this.problems[at].points.length), im: null };
   }
 
   /** u_a += strength Σ_b c_ab E^e moment_b of the rest (k^b of the external momentum where nothing is left). */
@@ -220,7 +214,12 @@ export class GridChain {
     const size = this.basis.length;
     const columns = problem.columns.length;
     const dressedMoments = dressed && this.momentsOf(dressed, at);
-    const moments = ending ? this.momentsOf(ending, at) : zeros(columns * size);
+    const moments = zeros(columns * size);
+    if (ending) {
+      const ends = this.momentsOf(ending, at);
+      moments.re.set(ends.re);
+      moments.im.set(ends.im);
+    }
     const { loopMoments } = problem;
     for (let column = 0; column < columns; column++) {
       for (let b = 0; b < size; b++) {
@@ -245,12 +244,9 @@ export class GridChain {
   /** Each proper part δ of monomial n that has a run of other kernels, with what is left behind it. */
   private forEachDressing(n: number, at: number, visit: (share: Share, behind: Share) => void): void {
     if (!this.dense.length || !this.basis.length) return;
-    const { exponents } = this.list.terms[n];
-    for (let inner = 0; inner < n; inner++) {
+    for (const { inner, rest } of this.list.splits(n)) {
       const share = this.shares[inner][at];
-      if (!share.dressed || !isPart(this.list.terms[inner].exponents, exponents)) continue;
-      const rest = this.rest(exponents, this.list.terms[inner].exponents);
-      if (rest >= 0) visit(share, this.shares[rest][at]);
+      if (share.dressed) visit(share, this.shares[rest][at]);
     }
   }
 

@@ -8,17 +8,29 @@ import { loopWeights } from './loop-weights';
 import { kernelScales, oscillationLength, type Setup } from './setup';
 import { externalsAt } from './subtraction';
 
-/** Energies (away from thresholds and poles) and external momenta at which amplitudes are followed up a ladder of cutoffs. */
+/** A ladder of cutoffs, with the grids and kernels at each rung. */
 export interface Ladder {
+  readonly cutoffs: readonly number[];
+  /** The bare series at one energy and a few external momenta: what its growth is read from. */
+  bare(): BareRun;
+  /** The series at several energies and more momenta, with room for counterterms: what forms are fitted to. */
+  fitting(): FittingRun;
+}
+
+export interface BareRun {
+  readonly energy: Complex;
+  readonly externals: readonly number[];
+  /** Advances every rung to monomial n. */
+  step(n: number): void;
+  /** R_n at [rung] for one row and column (indices of `externals`). */
+  values(n: number, row: number, column: number): Complex[];
+}
+
+export interface FittingRun {
   readonly cutoffs: readonly number[];
   readonly energies: readonly Complex[];
   readonly externals: readonly number[];
-  /** Starts the recursion afresh, on the same grids and kernels. */
-  restart(): void;
-  /** Advances every rung to monomial n. */
   step(n: number): void;
-  /** R_n at [rung] for one energy, row and column (indices of `externals`). */
-  values(n: number, energy: number, row: number, column: number): Complex[];
   /** The parts of R_n by what stands at its ends, each at [rung]. */
   parts(n: number, energy: number): AmplitudePart[];
   /** Adds a counterterm to monomial n: its strength at each rung. */
@@ -66,52 +78,44 @@ export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const cutoffs = Array.from({ length: wishes.rungs }, (_, j) => start * ratio ** j);
   const energies = Array.from({ length: wishes.energies }, (_, j) => energyAway(kinematics, soft, 0.7310585786 + 0.6 * j));
   const rungs = cutoffs.map(cutoff => {
-    const soft = { external: 0, edgeWidth: Math.min(Infinity, ...scales) };
+    const below = { external: 0, edgeWidth: Math.min(Infinity, ...scales) };
     const grid = momentumGrid(kinematics, regulator, cutoff, {
       ...gridWishes(setup, cutoff, momenta, wishes.pointsPerPanel),
-      ...(length > 0 ? {} : soft),
+      ...(length > 0 ? {} : below),
     });
-    const problems = energies.map(E =>
-      loopWeights(kinematics, regulator, grid, E, false, externals, 2 * Math.max(setup.size, ...wishes.powers), contactPowers(vertices)),
-    );
-    const kernels = new GridKernels(grid);
-    const start = () => new GridChain(list, vertices, kernels, problems, wishes.powers);
-    return { start, chain: start(), cutoff };
+    return { cutoff, grid, kernels: new GridKernels(grid) };
   });
   return {
-    restart: () => rungs.forEach(rung => (rung.chain = rung.start())),
     cutoffs,
-    energies,
-    externals,
-    step: n => rungs.forEach(rung => rung.chain.step(n)),
-    values: (n, energy, row, column) => rungs.map(rung => wholeAmplitude(rung.chain, n, energy, externals, row, column)),
-    parts: (n, energy) =>
-      partsOf(
-        rungs.map(rung => rung.chain),
-        n,
-        energy,
+    bare: () => {
+      const two = externalsAt(kinematics, momenta[0]).length > 1 ? externalsAt(kinematics, momenta[0]) : externals.slice(0, 2);
+      const chains = rungs.map(({ grid, kernels }) => {
+        const problem = loopWeights(kinematics, regulator, grid, energies[0], false, two, 2 * setup.size);
+        return new GridChain(list, vertices, kernels, [problem]);
+      });
+      return {
+        energy: energies[0],
+        externals: two,
+        step: n => chains.forEach(chain => chain.step(n)),
+        values: (n, row, column) => chains.map(chain => chain.amplitude(n, 0, row, column)),
+      };
+    },
+    fitting: () => {
+      const highest = 2 * Math.max(setup.size, ...wishes.powers);
+      const chains = rungs.map(({ grid, kernels }) => {
+        const problems = energies.map(E => loopWeights(kinematics, regulator, grid, E, false, externals, highest, contactPowers(vertices)));
+        return new GridChain(list, vertices, kernels, problems, wishes.powers);
+      });
+      return {
+        cutoffs,
+        energies,
         externals,
-      ),
-    addCounterterm: (n, parts) => rungs.forEach(rung => rung.chain.addCounterterm(n, parts(rung.cutoff))),
+        step: n => chains.forEach(chain => chain.step(n)),
+        parts: (n, energy) => partsOf(chains, n, energy, externals),
+        addCounterterm: (n, parts) => chains.forEach((chain, j) => chain.addCounterterm(n, parts(cutoffs[j]))),
+      };
+    },
   };
-}
-
-/** R_n(p, k) put together from its parts. */
-function wholeAmplitude(chain: GridChain, n: number, energy: number, externals: readonly number[], row: number, column: number): Complex {
-  const sum = { re: 0, im: 0 };
-  const add = (c: number, weight: number) => {
-    const left = chain.dressedAmplitude(n, energy, row, c);
-    chain.contactEnd(n, energy, c).forEach((u, a) => {
-      const p = externals[row] ** chain.powers[a];
-      left.re += p * u.re;
-      left.im += p * u.im;
-    });
-    sum.re += weight * left.re;
-    sum.im += weight * left.im;
-  };
-  add(column, 1);
-  chain.endPowers.forEach((d, j) => add(externals.length + j, externals[column] ** d));
-  return sum;
 }
 
 function partsOf(chains: readonly GridChain[], n: number, energy: number, externals: readonly number[]): AmplitudePart[] {

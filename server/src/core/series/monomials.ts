@@ -11,10 +11,19 @@ export interface Term {
   readonly factors: number;
 }
 
+export interface Split {
+  readonly inner: number;
+  readonly rest: number;
+}
+
 export interface MonomialList {
   readonly terms: readonly Term[];
   /** Index of the monomial with these exponents, or -1. */
   indexOf(exponents: Monomial): number;
+  /** The ways to split term n into a proper part and what is left: indices of both, by growing part. */
+  splits(n: number): readonly Split[];
+  /** Whether term n is part of a longer one in the list. */
+  readonly continues: readonly boolean[];
   /** Index of term n with one factor i less (-1: there is none, or nothing is left). */
   readonly without: readonly (readonly number[])[];
 }
@@ -41,7 +50,16 @@ export function monomialsUpTo(interactions: readonly Pick<InteractionSpec, 'name
   const index = new Map(terms.map((t, n) => [t.exponents.join(), n]));
   const indexOf = (exponents: Monomial) => index.get(exponents.join()) ?? -1;
   const without = terms.map(t => t.exponents.map((n, i) => (n === 0 ? -1 : indexOf(t.exponents.map((m, j) => (j === i ? m - 1 : m))))));
-  return { terms, indexOf, without };
+  const known: (readonly Split[])[] = [];
+  const splits = (n: number): readonly Split[] =>
+    (known[n] ??= terms
+      .slice(0, n)
+      .flatMap((t, inner) =>
+        isProperPart(t.exponents, terms[n].exponents) ? [{ inner, rest: indexOf(difference(terms[n].exponents, t.exponents)) }] : [],
+      ));
+  const cheapest = Math.min(...interactions.map(i => i.order));
+  const continues = terms.map(t => t.order + cheapest <= order);
+  return { terms, indexOf, splits, continues, without };
 }
 
 function compareDeclared(s: Monomial, t: Monomial): number {

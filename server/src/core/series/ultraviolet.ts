@@ -90,7 +90,7 @@ function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][numb
 function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly boolean[]): LadderWishes {
   const degree = Math.max(-1, ...symbolic.terms.map((t, n) => (dense[n] ? t.overallDegree : -1)));
   const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
-  if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 16, powers: [], steepest };
+  if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 12, powers: [], steepest };
   const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a)
     .filter(a => setup.kinematics.signed || a % 2 === 0)
     .map(a => a + partialWave(setup.spec.wave));
@@ -98,22 +98,23 @@ function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly 
     rungs: 11 + Math.ceil(degree / 2),
     energies: 1 + Math.floor(degree / 2),
     momenta: 2 + Math.floor(degree / 2),
-    pointsPerPanel: 16,
+    pointsPerPanel: steepest > 3 ? 16 : 12,
     powers,
     steepest,
   };
 }
 
 /** Walks the ladder with the bare series: contacts against their exact values, everything else by its growth. */
-function confirm({ contacts, terms }: SymbolicVerdicts, ladder: Ladder, shouldStop: () => boolean): boolean[] {
-  const exact = contacts ? contactsOnLadder(contacts, ladder) : [];
-  const last = ladder.externals.length - 1;
+function confirm({ contacts, terms }: SymbolicVerdicts, { cutoffs, bare }: Ladder, shouldStop: () => boolean): boolean[] {
+  const run = bare();
+  const exact = contacts ? contactsOnLadder(contacts, run) : [];
+  const last = run.externals.length - 1;
   return terms.map((t, n) => {
     if (shouldStop()) return false;
-    ladder.step(n);
-    if (t.contact) return contactAgrees(contacts!, exact[n]!, ladder, n);
+    run.step(n);
+    if (t.contact) return contactAgrees(contacts!, exact[n]!, cutoffs, run, n);
     if (t.verdict === 'oscillates') return true;
-    return growsAs(ladder.cutoffs, ladder.values(n, 0, 0, last), t.verdict === 'diverges' ? { power: t.power!, log: t.log! } : null);
+    return growsAs(cutoffs, run.values(n, 0, last), t.verdict === 'diverges' ? { power: t.power!, log: t.log! } : null);
   });
 }
 
@@ -128,15 +129,15 @@ function fitDense(
   scale: number,
   shouldStop: () => boolean,
 ): void {
-  ladder.restart();
+  const run = ladder.fitting();
   for (let n = 0; n < symbolic.terms.length && !shouldStop(); n++) {
-    ladder.step(n);
+    run.step(n);
     const t = symbolic.terms[n];
     const wanted = dense[n] && t.overallDegree >= 0 && t.verdict === 'diverges';
     if (wanted)
       fitted[n] = fitOverall(
         setup,
-        ladder,
+        run,
         n,
         t.overallDegree,
         scale,
@@ -145,7 +146,7 @@ function fitDense(
     const forms: readonly Pick<FittedForm, 'form' | 'power' | 'log' | 'coefficient'>[] = exact[n]?.forms ?? fitted[n]?.forms ?? [];
     if (!forms.length) continue;
     const vertices = forms.map(f => ('interaction' in f.form ? setup.vertices[f.form.interaction] : formVertex(f.form)));
-    ladder.addCounterterm(n, L =>
+    run.addCounterterm(n, L =>
       forms.map((f, j): ScaledVertex => ({
         vertex: vertices[j],
         strength: scaled(f.coefficient, -(L ** f.power) * Math.log(L / scale) ** f.log),

@@ -1,5 +1,5 @@
 import type { Complex } from '../algebra/expression';
-import { isProperPart, difference, type MonomialList } from './monomials';
+import type { MonomialList } from './monomials';
 
 /** A square matrix between on-shell momenta: [row][column]. */
 export type Block = readonly (readonly Complex[])[];
@@ -10,13 +10,9 @@ export type Block = readonly (readonly Complex[])[];
  */
 export function amplitudesFromStandingWaves(list: MonomialList, standing: readonly Block[], density: readonly number[]): Block[] {
   const result: Block[] = [];
-  list.terms.forEach((term, n) => {
+  list.terms.forEach((_, n) => {
     const sum = standing[n].map(row => row.map(c => ({ ...c })));
-    for (let inner = 0; inner < n; inner++) {
-      if (!isProperPart(list.terms[inner].exponents, term.exponents)) continue;
-      const rest = result[list.indexOf(difference(term.exponents, list.terms[inner].exponents))];
-      addLink(sum, standing[inner], density, rest);
-    }
+    for (const { inner, rest } of list.splits(n)) addLink(sum, standing[inner], density, result[rest]);
     result.push(sum);
   });
   return result;
