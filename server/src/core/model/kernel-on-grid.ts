@@ -62,6 +62,9 @@ const DEEPEST = 32;
 /** Beyond this distance (in half panels from the middle) a singularity no longer hurts the panel's own rule. */
 const NEAR = 2;
 
+/** Room for the refined points of one row, grown when needed. */
+let scratch = { p: new Float64Array(0), k: new Float64Array(0), re: new Float64Array(0), im: new Float64Array(0) };
+
 function correctRow(
   element: MatrixElement,
   grid: MomentumGrid,
@@ -71,28 +74,53 @@ function correctRow(
   re: Float64Array,
   im: Float64Array,
 ): void {
+  const near: { panel: Panel; half: number; rule: SubRule; start: number }[] = [];
+  let count = 0;
   for (const panel of grid.panels) {
     const half = (panel.to - panel.from) / 2;
-    const middle = (panel.to + panel.from) / 2;
-    const t = (p - middle) / half;
+    const t = (p - (panel.to + panel.from) / 2) / half;
     if (Math.abs(t) > NEAR || 2 * half <= scale) continue;
     const rule = subRule(panel.count, t, Math.max(2 ** -DEEPEST, scale / half));
-    const k = rule.x.map(x => middle + half * x);
-    const v = { re: new Float64Array(k.length), im: new Float64Array(k.length) };
-    element.fill(new Float64Array(k.length).fill(p), k, E, v.re, v.im);
-    collect(rule, v.re, panel, grid.weights, half, re);
-    if (!element.real) collect(rule, v.im, panel, grid.weights, half, im);
+    near.push({ panel, half, rule, start: count });
+    count += rule.x.length;
+  }
+  if (!count) return;
+  if (scratch.p.length < count)
+    scratch = {
+      p: new Float64Array(2 * count),
+      k: new Float64Array(2 * count),
+      re: new Float64Array(2 * count),
+      im: new Float64Array(2 * count),
+    };
+  for (const { panel, half, rule, start } of near) {
+    const middle = (panel.to + panel.from) / 2;
+    for (let s = 0; s < rule.x.length; s++) scratch.k[start + s] = middle + half * rule.x[s];
+  }
+  const [vRe, vIm] = [scratch.re.subarray(0, count), scratch.im.subarray(0, count)];
+  element.fill(scratch.p.fill(p, 0, count).subarray(0, count), scratch.k.subarray(0, count), E, vRe, vIm);
+  for (const { panel, half, rule, start } of near) {
+    collect(rule, vRe, start, panel, grid.weights, half, re);
+    if (!element.real) collect(rule, vIm, start, panel, grid.weights, half, im);
   }
 }
 
-function collect(rule: SubRule, v: Float64Array, panel: Panel, weights: Float64Array, half: number, row: Float64Array): void {
+/** Σ over the refined points of weight * V * (Lagrange polynomial of each node), in place of V at the node. */
+function collect(
+  rule: SubRule,
+  v: Float64Array,
+  start: number,
+  panel: Panel,
+  weights: Float64Array,
+  half: number,
+  row: Float64Array,
+): void {
   const m = panel.count;
-  const sum = new Float64Array(m);
-  for (let s = 0; s < v.length; s++) {
-    const f = v[s] * rule.weights[s];
-    for (let j = 0; j < m; j++) sum[j] += f * rule.share[s * m + j];
+  row.fill(0, panel.start, panel.start + m);
+  for (let s = 0, at = 0; s < rule.x.length; s++) {
+    const f = v[start + s] * rule.weights[s] * half;
+    for (let j = 0; j < m; j++, at++) row[panel.start + j] += f * rule.share[at];
   }
-  for (let j = 0; j < m; j++) row[panel.start + j] = (sum[j] * half) / weights[panel.start + j];
+  for (let j = panel.start; j < panel.start + m; j++) row[j] /= weights[j];
 }
 
 /** By node count, then depth of refinement, then place; kept small, since external momenta bring in places of their own. */

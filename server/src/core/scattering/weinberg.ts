@@ -4,7 +4,7 @@ import type { LoopWeights } from '../series/loop-weights';
 import type { PotentialMatrix } from './potential';
 
 /** Products with the kernel; it is compact, so its large eigenvalues are found within a few. */
-const STEPS = 20;
+const STEPS = 14;
 /** At most so many are reported. */
 const REPORTED = 6;
 

@@ -13,7 +13,7 @@ export interface Evaluation {
   readonly at: CutoffResult;
   /** The same on a coarser grid: the difference is the error. */
   readonly coarse: CutoffResult;
-  /** Cutoffs of the scan in rising order; the first momentum everywhere, all of them in the upper half. */
+  /** Cutoffs of the scan in rising order; the first momentum everywhere, all of them at a few in the upper half. */
   readonly scan: readonly CutoffResult[];
 }
 
@@ -34,12 +34,19 @@ export function evaluateSeries(
   const cutoffs = scanCutoffs(setup).filter(L => setup.regulator.shape.kind !== 'sharp' || L > 1.02 * points[0].p);
   const at = run(cutoff.value, points, fine);
   const coarse = run(cutoff.value, points, fewer);
+  const upper = upperHalf(cutoffs.length);
   const scan = cutoffs.map((L, j) => {
     onStep((j + 1) / (cutoffs.length + 1));
-    const all = j >= cutoffs.length >> 1 && (setup.regulator.shape.kind !== 'sharp' || momenta.every(p => L > 1.02 * p));
+    const all = upper.has(j) && (setup.regulator.shape.kind !== 'sharp' || momenta.every(p => L > 1.02 * p));
     return run(L, all ? points : points.slice(0, 1), fine);
   });
   return { points, at, coarse, scan };
+}
+
+/** The indices from the middle of the scan to its end at which every momentum is followed: both ends and two between them. */
+function upperHalf(count: number): Set<number> {
+  const middle = count >> 1;
+  return new Set([0, 1, 2, 3].map(j => Math.round(middle + ((count - 1 - middle) * j) / 3)));
 }
 
 export function scanCutoffs(setup: Setup): number[] {
@@ -88,7 +95,8 @@ export function byOrder(setup: Setup, amplitudes: readonly { forward: Complex }[
 
 /** Largest |T(L) - T(L_max)|/|T(L_max)| of the renormalised sum over the upper half of the scan; null without one. */
 export function driftOf(setup: Setup, evaluation: Evaluation, j: number): number | null {
-  const upper = evaluation.scan.filter(s => s.renormalised.length > j).slice(-Math.ceil(evaluation.scan.length / 2));
+  const followed = upperHalf(evaluation.scan.length);
+  const upper = evaluation.scan.filter((s, at) => followed.has(at) && s.renormalised.length > j);
   if (upper.length < 2) return null;
   const totals = upper.map(s => total(byOrder(setup, s.renormalised[j]).values));
   const last = totals[totals.length - 1];

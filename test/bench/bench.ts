@@ -1,0 +1,96 @@
+/**
+ * Times of the main job as ratios against references measured in the same run. `npm run bench`.
+ *  1. from an edit to the symbolic verdicts, against the JSON language service of VS Code on a JSON file of the same size;
+ *  2. the whole check of the same model, cold from the shell and warm;
+ *  3. series and full solution on a 64-point grid, against the same work in NumPy with one thread (reference.py).
+ */
+import { spawnSync } from 'node:child_process';
+import { readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { getLanguageService, TextDocument } from 'vscode-json-languageservice';
+import { ResultsCache } from '../../server/src/session/cache';
+import { checkComplete, checkSymbolic } from '../../server/src/session/check';
+import { referenceWork } from './reference-work';
+
+const root = join(__dirname, '..');
+const text = readFileSync(join(root, 'test/bench/sixty-lines.tare'), 'utf8');
+const defaults = { cutoff: 10, order: 3 };
+const overrides = { cutoff: null, order: null };
+
+const median = (values: number[]): number => [...values].sort((x, y) => x - y)[values.length >> 1];
+
+async function times(count: number, work: (round: number) => unknown): Promise<number> {
+  const found: number[] = [];
+  for (let round = 0; round < count; round++) {
+    const start = performance.now();
+    await work(round);
+    found.push(performance.now() - start);
+  }
+  return median(found.slice(count >> 2));
+}
+
+/** A strength changes with each edit, so that nothing can be taken from the edit before. */
+const edited = (round: number): string => text.replace('coupling c = 0.4', `coupling c = 0.4${round + 1}`);
+/** A kernel changes. */
+const rewritten = (round: number): string => text.replace('d*(p^2 + k^2)', `d*(p^2 + k^2)*1.0${round + 1}`);
+
+function jsonOfTheSameSize(): { json: string; schema: object } {
+  const interaction = (name: string) => ({ name, arguments: ['p', 'k'], kernel: 'd*(p^2 + k^2)', order: 2, comment: 'what a finite range of the core adds' });
+  const items: object[] = [];
+  while (JSON.stringify({ interactions: items }, null, 2).length < text.length - 150) items.push(interaction(`interaction_${items.length}`));
+  const property = { type: 'string', minLength: 1, pattern: '^[^\\n]*$' };
+  const item = {
+    type: 'object',
+    required: ['name', 'kernel'],
+    additionalProperties: false,
+    properties: { name: property, kernel: property, comment: property, order: { type: 'integer', minimum: 1 }, arguments: { type: 'array', items: { enum: ['p', 'k', 'E', 'q', 'x', 'r'] } } },
+  };
+  return { json: JSON.stringify({ interactions: items }, null, 2), schema: { type: 'object', properties: { interactions: { type: 'array', items: item } } } };
+}
+
+async function keystroke(): Promise<void> {
+  const { json, schema } = jsonOfTheSameSize();
+  const service = getLanguageService({});
+  service.configure({ validate: true, schemas: [{ uri: 'memory://model', fileMatch: ['*'], schema }] });
+  const reference = await times(400, async round => {
+    const document = TextDocument.create('file:///model.json', 'json', round, json.replace('interaction_0', `interaction_${round}`));
+    await service.doValidation(document, service.parseJSONDocument(document));
+  });
+  const strength = await times(200, round => checkSymbolic(edited(round), defaults, overrides, new ResultsCache()));
+  const kernel = await times(200, round => checkSymbolic(rewritten(round), defaults, overrides, new ResultsCache()));
+  print('edit of a strength to verdicts', strength, `${(strength / reference).toFixed(2)} times the JSON service's ${reference.toFixed(2)} ms (${json.length} bytes; the model: ${text.length})`);
+  print('edit of a kernel to verdicts', kernel, `${(kernel / reference).toFixed(2)} times the JSON service`);
+}
+
+async function wholeCheck(): Promise<void> {
+  const hooks = { shouldStop: () => false, budget: Infinity, full: false };
+  const warm = await times(12, round => checkComplete(edited(round), defaults, overrides, hooks, new ResultsCache()));
+  print('whole check, warm', warm, '');
+  const cold = await times(6, () => spawnSync(process.execPath, [join(root, 'dist/cli.js'), 'check', join(root, 'test/bench/sixty-lines.tare')]));
+  const node = await times(6, () => spawnSync(process.execPath, ['-e', '0']));
+  print('whole check, cold from the shell', cold, `${(cold / node).toFixed(1)} times an empty node process`);
+}
+
+function againstNumpy(): void {
+  const { stdout, status, stderr } = spawnSync('/usr/bin/python3', [join(root, 'test/bench/reference.py')], { encoding: 'utf8' });
+  if (status !== 0) {
+    console.log(`SKIPPED: NumPy is not installed for /usr/bin/python3 (${stderr.trim().split('\n').pop() ?? ''})`);
+    return;
+  }
+  const reference = JSON.parse(stdout) as { seconds: number };
+  const ours = Array.from({ length: 5 }, () => {
+    const start = performance.now();
+    referenceWork();
+    return performance.now() - start;
+  });
+  const time = median(ours.slice(1));
+  print('series and LU on 64 points', time, `${(time / (1000 * reference.seconds)).toFixed(2)} times NumPy's ${(1000 * reference.seconds).toFixed(0)} ms`);
+}
+
+const print = (what: string, milliseconds: number, note: string): void => console.log(`${what.padEnd(34)} ${milliseconds.toFixed(2).padStart(9)} ms   ${note}`);
+
+void (async () => {
+  await keystroke();
+  await wholeCheck();
+  againstNumpy();
+})();
