@@ -35,17 +35,33 @@ const edited = (round: number): string => text.replace('coupling c = 0.4', `coup
 const rewritten = (round: number): string => text.replace('d*(p^2 + k^2)', `d*(p^2 + k^2)*1.0${round + 1}`);
 
 function jsonOfTheSameSize(): { json: string; schema: object } {
-  const interaction = (name: string) => ({ name, arguments: ['p', 'k'], kernel: 'd*(p^2 + k^2)', order: 2, comment: 'what a finite range of the core adds' });
+  const interaction = (name: string) => ({
+    name,
+    arguments: ['p', 'k'],
+    kernel: 'd*(p^2 + k^2)',
+    order: 2,
+    comment: 'what a finite range of the core adds',
+  });
   const items: object[] = [];
-  while (JSON.stringify({ interactions: items }, null, 2).length < text.length - 150) items.push(interaction(`interaction_${items.length}`));
+  while (JSON.stringify({ interactions: items }, null, 2).length < text.length - 150)
+    items.push(interaction(`interaction_${items.length}`));
   const property = { type: 'string', minLength: 1, pattern: '^[^\\n]*$' };
   const item = {
     type: 'object',
     required: ['name', 'kernel'],
     additionalProperties: false,
-    properties: { name: property, kernel: property, comment: property, order: { type: 'integer', minimum: 1 }, arguments: { type: 'array', items: { enum: ['p', 'k', 'E', 'q', 'x', 'r'] } } },
+    properties: {
+      name: property,
+      kernel: property,
+      comment: property,
+      order: { type: 'integer', minimum: 1 },
+      arguments: { type: 'array', items: { enum: ['p', 'k', 'E', 'q', 'x', 'r'] } },
+    },
   };
-  return { json: JSON.stringify({ interactions: items }, null, 2), schema: { type: 'object', properties: { interactions: { type: 'array', items: item } } } };
+  return {
+    json: JSON.stringify({ interactions: items }, null, 2),
+    schema: { type: 'object', properties: { interactions: { type: 'array', items: item } } },
+  };
 }
 
 async function keystroke(): Promise<void> {
@@ -58,7 +74,11 @@ async function keystroke(): Promise<void> {
   });
   const strength = await times(200, round => checkSymbolic(edited(round), defaults, overrides, new ResultsCache()));
   const kernel = await times(200, round => checkSymbolic(rewritten(round), defaults, overrides, new ResultsCache()));
-  print('edit of a strength to verdicts', strength, `${(strength / reference).toFixed(2)} times the JSON service's ${reference.toFixed(2)} ms (${json.length} bytes; the model: ${text.length})`);
+  print(
+    'edit of a strength to verdicts',
+    strength,
+    `${(strength / reference).toFixed(2)} times the JSON service's ${reference.toFixed(2)} ms (${json.length} bytes; the model: ${text.length})`,
+  );
   print('edit of a kernel to verdicts', kernel, `${(kernel / reference).toFixed(2)} times the JSON service`);
 }
 
@@ -66,7 +86,9 @@ async function wholeCheck(): Promise<void> {
   const hooks = { shouldStop: () => false, budget: Infinity, full: false };
   const warm = await times(12, round => checkComplete(edited(round), defaults, overrides, hooks, new ResultsCache()));
   print('whole check, warm', warm, '');
-  const cold = await times(6, () => spawnSync(process.execPath, [join(root, 'dist/cli.js'), 'check', join(root, 'test/bench/sixty-lines.tare')]));
+  const cold = await times(6, () =>
+    spawnSync(process.execPath, [join(root, 'dist/cli.js'), 'check', join(root, 'test/bench/sixty-lines.tare')]),
+  );
   const node = await times(6, () => spawnSync(process.execPath, ['-e', '0']));
   print('whole check, cold from the shell', cold, `${(cold / node).toFixed(1)} times an empty node process`);
 }
@@ -84,10 +106,15 @@ function againstNumpy(): void {
     return performance.now() - start;
   });
   const time = median(ours.slice(1));
-  print('series and LU on 64 points', time, `${(time / (1000 * reference.seconds)).toFixed(2)} times NumPy's ${(1000 * reference.seconds).toFixed(0)} ms`);
+  print(
+    'series and LU on 64 points',
+    time,
+    `${(time / (1000 * reference.seconds)).toFixed(2)} times NumPy's ${(1000 * reference.seconds).toFixed(0)} ms`,
+  );
 }
 
-const print = (what: string, milliseconds: number, note: string): void => console.log(`${what.padEnd(34)} ${milliseconds.toFixed(2).padStart(9)} ms   ${note}`);
+const print = (what: string, milliseconds: number, note: string): void =>
+  console.log(`${what.padEnd(34)} ${milliseconds.toFixed(2).padStart(9)} ms   ${note}`);
 
 void (async () => {
   await keystroke();

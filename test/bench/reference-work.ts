@@ -12,15 +12,27 @@ import { amplitudesFromStandingWaves } from '../../server/src/core/series/unitar
 
 /** The model of reference.py: Yukawa and contact in the l = 0 wave, 2mu = 1. */
 const spec: ModelSpec = {
-  name: 'reference', dimension: 3, wave: { kind: 'angular', number: 0 }, units: null, mu: 0.5, masses: null, kinetic: null,
+  name: 'reference',
+  dimension: 3,
+  wave: { kind: 'angular', number: 0 },
+  units: null,
+  mu: 0.5,
+  masses: null,
+  kinetic: null,
   couplings: [],
   interactions: [
-    { name: 'yukawa', arguments: 'r', order: 1, kernel: binary('divide', binary('multiply', number(-1.2), call('exp', [binary('multiply', number(-1), symbol('r'))])), symbol('r')) },
+    {
+      name: 'yukawa',
+      arguments: 'r',
+      order: 1,
+      kernel: binary('divide', binary('multiply', number(-1.2), call('exp', [binary('multiply', number(-1), symbol('r'))])), symbol('r')),
+    },
     { name: 'contact', arguments: 'pk', order: 1, kernel: number(0.3) },
   ],
   cutoff: { name: 'L', value: 100, shape: { kind: 'sharp' }, declared: true, scan: null },
   series: { order: 4, declared: true, points: [{ p: 0.1, E: null }] },
-  counterterms: [], expectations: [],
+  counterterms: [],
+  expectations: [],
 };
 
 const momenta = Array.from({ length: 16 }, (_, j) => 0.1 + j * 0.1);
@@ -43,8 +55,16 @@ export function referenceWork(): { sum: { re: number; im: number }; last: { re: 
       return problems.map((__, at) => [[chain.amplitude(n, at, 0, 0)]]);
     });
     problems.forEach((problem, at) => {
-      const series = amplitudesFromStandingWaves(list, standing.map(blocks => blocks[at]), problem.density).map(block => block[0][0]);
-      const potential = potentialMatrix(kernels, vertices.map(vertex => ({ vertex, strength: { re: 1, im: 0 } })), problem);
+      const series = amplitudesFromStandingWaves(
+        list,
+        standing.map(blocks => blocks[at]),
+        problem.density,
+      ).map(block => block[0][0]);
+      const potential = potentialMatrix(
+        kernels,
+        vertices.map(vertex => ({ vertex, strength: { re: 1, im: 0 } })),
+        problem,
+      );
       const full = amplitudeFromStandingWave(standingWave(potential, problem), problem.density)[0][0];
       const all = [...series, full];
       for (const t of all) {
@@ -65,7 +85,11 @@ function logarithmicGrid(cutoff: number): MomentumGrid {
   const nodes = u.map(Math.expm1);
   const weights = u.map((v, j) => ((w[j] * reach) / 2) * Math.exp(v));
   return {
-    cutoff, low: 0, high: cutoff, nodes, weights,
+    cutoff,
+    low: 0,
+    high: cutoff,
+    nodes,
+    weights,
     measure: nodes.map((k, j) => (weights[j] * k * k) / (2 * Math.PI ** 2)),
     energies: nodes.map(k => k * k),
     panels: [{ from: 0, to: cutoff, start: 0, count: 64 }],

@@ -3,16 +3,9 @@ import type { ModelResults } from '../core/results';
 
 export type SpecKey = string;
 
-/**
- * The spec as text in which the order of keys plays no part: equal for two models that physics cannot tell apart,
- * wherever they stand and however they are written.
- */
+/** The spec as text: equal for two models that physics cannot tell apart, wherever they stand and whatever they are called. */
 export function keyOf(spec: ModelSpec): SpecKey {
-  return JSON.stringify({ ...spec, name: '' }, (_, value: unknown) => {
-    if (typeof value === 'number') return Object.is(value, -0) ? '-0' : Number.isFinite(value) ? value : String(value);
-    if (typeof value !== 'object' || value === null || Array.isArray(value)) return value;
-    return Object.fromEntries(Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1)));
-  });
+  return JSON.stringify({ ...spec, name: '' });
 }
 
 /** Results by spec, the least recently used dropped first. */

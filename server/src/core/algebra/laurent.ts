@@ -25,6 +25,9 @@ export class LaurentRing {
   private readonly im: Float64Array;
   private readonly size: Float64Array;
   private readonly width: number;
+  /** The slots touched since `clear`: from `first` up to and without `end`. */
+  private first = 0;
+  private end = 0;
 
   /** Powers lowest..highest in steps of one, logs 0..highestLog. */
   constructor(
@@ -41,15 +44,23 @@ export class LaurentRing {
 
   /** Starts a sum; then `add`/`addProduct`; then `take`. One sum at a time. */
   clear(): void {
-    this.re.fill(0);
-    this.im.fill(0);
-    this.size.fill(0);
+    this.re.fill(0, this.first, this.end);
+    this.im.fill(0, this.first, this.end);
+    this.size.fill(0, this.first, this.end);
+    this.first = this.re.length;
+    this.end = 0;
+  }
+
+  private touch(slot: number): void {
+    if (slot < this.first) this.first = slot;
+    if (slot >= this.end) this.end = slot + 1;
   }
 
   add(power: number, log: number, re: number, im: number): void {
     if (power < this.lowest) return;
     if (power > this.highest || log > this.highestLog) throw new RangeError('a Laurent polynomial has outgrown its ring');
     const slot = (power - this.lowest) * this.width + log;
+    this.touch(slot);
     this.re[slot] += re;
     this.im[slot] += im;
     this.size[slot] += Math.abs(re) + Math.abs(im);
@@ -58,6 +69,7 @@ export class LaurentRing {
   addScaled(x: Laurent, re: number, im: number): void {
     for (let s = 0; s < x.slots.length; s++) {
       const slot = x.slots[s];
+      this.touch(slot);
       const a = x.re[s] * re - x.im[s] * im;
       const b = x.re[s] * im + x.im[s] * re;
       this.re[slot] += a;
@@ -76,6 +88,7 @@ export class LaurentRing {
         if (slot < 0 || (xPower < 0 && Math.floor(y.slots[t] / width) + xPower < 0)) continue;
         if ((y.slots[t] % width) + xLog >= width || slot >= this.re.length)
           throw new RangeError('a Laurent polynomial has outgrown its ring');
+        this.touch(slot);
         const a = x.re[s] * y.re[t] - x.im[s] * y.im[t];
         const b = x.re[s] * y.im[t] + x.im[s] * y.re[t];
         this.re[slot] += a;
@@ -86,10 +99,22 @@ export class LaurentRing {
   }
 
   take(): Laurent {
-    const slots: number[] = [];
-    for (let s = 0; s < this.re.length; s++) if (Math.abs(this.re[s]) + Math.abs(this.im[s]) > RELATIVE_ZERO * this.size[s]) slots.push(s);
-    if (slots.length === 0) return this.zero;
-    return { slots: Int32Array.from(slots), re: Float64Array.from(slots, s => this.re[s]), im: Float64Array.from(slots, s => this.im[s]) };
+    let count = 0;
+    for (let s = this.first; s < this.end; s++) if (this.isNonZero(s)) count++;
+    if (count === 0) return this.zero;
+    const taken = { slots: new Int32Array(count), re: new Float64Array(count), im: new Float64Array(count) };
+    for (let s = this.first, at = 0; s < this.end; s++) {
+      if (!this.isNonZero(s)) continue;
+      taken.slots[at] = s;
+      taken.re[at] = this.re[s];
+      taken.im[at] = this.im[s];
+      at++;
+    }
+    return taken;
+  }
+
+  private isNonZero(slot: number): boolean {
+    return Math.abs(this.re[slot]) + Math.abs(this.im[slot]) > RELATIVE_ZERO * this.size[slot];
   }
 
   terms(x: Laurent): LaurentTerm[] {

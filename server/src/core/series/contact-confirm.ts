@@ -6,7 +6,7 @@ import { loopMoments } from './loop-moments';
 /** The exact bare contact monomials at the energy of the run; null for monomials that hold another kernel. */
 export function contactsOnLadder(contacts: ContactSetting, run: BareRun): (Grid | null)[] {
   const E = run.energy;
-  const point = { E, moments: loopMoments(contacts.kinematics, contacts.regulator, contacts.ring, E, 2 * (contacts.size - 1)) };
+  const point = { E, moments: loopMoments(contacts.kinematics, contacts.regulator, contacts.ring, E, contacts.loopPowers) };
   return contactChain(contacts.list, contacts.vertices, [point], contacts.ring, contacts.size, null).map(grids => grids && grids[0]);
 }
 

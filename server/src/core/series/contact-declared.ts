@@ -36,7 +36,7 @@ export function declaredScheme(setting: ContactSetting, counterterms: readonly C
   const at = (E: Complex): number => {
     const known = points.findIndex(p => p.E.re === E.re && p.E.im === E.im);
     if (known >= 0) return known;
-    return points.push({ E, moments: loopMoments(kinematics, setting.regulator, ring, E, 2 * (size - 1)) }) - 1;
+    return points.push({ E, moments: loopMoments(kinematics, setting.regulator, ring, E, setting.loopPowers) }) - 1;
   };
   const testMomentum = setting.momentum * 0.8660254;
   const test = at({ re: kinematics.energy(testMomentum), im: 0 });

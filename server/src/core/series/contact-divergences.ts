@@ -30,6 +30,8 @@ export interface ContactSetting {
   readonly ring: LaurentRing;
   /** Powers 0..size-1 of p and k occur. */
   readonly size: number;
+  /** The powers k^n of loop momenta that occur between two contacts. */
+  readonly loopPowers: readonly number[];
   /** A momentum of the size of those looked at. */
   readonly momentum: number;
 }
@@ -41,13 +43,24 @@ export function contactSetting(
   regulator: Regulator,
   momentum: number,
   size: number,
+  counterterms: readonly MomentumTerm[],
 ): ContactSetting {
   const contactTerms = list.terms.filter(t => t.exponents.every((m, i) => m === 0 || vertices[i]));
   const loops = Math.max(1, ...contactTerms.map(t => t.factors - 1));
   const growth = Math.max(1, 2 * (size - 1) + kinematics.dimension - Math.floor(propagatorFall(kinematics)));
+  const all = [...vertices, counterterms].flatMap(v => v ?? []);
+  const loopPowers = [...new Set(all.flatMap(t => all.map(u => t.b + u.a)))];
+  const logs = logarithmsOccur(loopPowers, kinematics, regulator) ? loops + 1 : 0;
   // Six powers below what can still grow, so that the value of a polynomial can be held against numbers at cutoffs of 50 soft momenta.
-  const ring = new LaurentRing(-loops * growth - 6, loops * growth, loops + 1);
-  return { list, vertices, kinematics, regulator, ring, size, momentum };
+  const ring = new LaurentRing(-loops * growth - 6, loops * growth, logs);
+  return { list, vertices, kinematics, regulator, ring, size, loopPowers, momentum };
+}
+
+/** A loop k^n leaves a logarithm where n + D is a multiple of the power g of a pure kinetic energy (and of the steps of the cutoff's shape). */
+function logarithmsOccur(loopPowers: readonly number[], { purePower, dimension }: Kinematics, { step }: Regulator): boolean {
+  const g = purePower?.exponent;
+  if (!g || !Number.isInteger(g) || (Number.isFinite(step) && step % g !== 0)) return true;
+  return loopPowers.some(n => (n + dimension) % g === 0);
 }
 
 /** A complex energy away from every root and threshold: real and negative where the kinetic energy has a threshold. */
@@ -58,7 +71,7 @@ export function energyAway(kinematics: Kinematics, momentum: number, factor: num
 }
 
 function pointAt(setting: ContactSetting, E: Complex, negativeSide = 1): EnergyPoint {
-  return { E, moments: loopMoments(setting.kinematics, setting.regulator, setting.ring, E, 2 * (setting.size - 1), negativeSide) };
+  return { E, moments: loopMoments(setting.kinematics, setting.regulator, setting.ring, E, setting.loopPowers, negativeSide) };
 }
 
 /** Growth of each bare contact monomial at fixed p, k, E; null for monomials that hold another kernel. Throws `NoExpansion`. */

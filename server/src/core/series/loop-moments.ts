@@ -9,7 +9,7 @@ import { gaussLegendreOn } from '../quadrature/gauss-legendre';
 type PropagatorSeries = readonly { readonly m: number; readonly c: Complex }[];
 
 /**
- * I_n(E) = norm ∫ |k|^(D-1) dk k^n f(k/L)² / (E - kinetic(k)) for n = 0..highest as Laurent polynomials in L.
+ * I_n(E) = norm ∫ |k|^(D-1) dk k^n f(k/L)² / (E - kinetic(k)) for the wanted n as Laurent polynomials in L; 0 at every other n.
  * Expanded by regions: k of the order of L gives norm Σ_m c_m M(n + D - m) L^(n+D-m), M the Mellin transform of f²; soft k gives
  * Σ_j t_j L^(-step*j) F_(n+step*j)(E), t_j the Taylor coefficients of f² and F the finite part under a sharp cutoff, logarithms as ln L.
  * Below every threshold (or complex E) the plain integral; above it the principal value. `negativeSide` weighs the loop momenta k < 0 of
@@ -20,12 +20,14 @@ export function loopMoments(
   regulator: Regulator,
   ring: LaurentRing,
   E: Complex,
-  highest: number,
+  wanted: readonly number[],
   negativeSide = 1,
 ): Laurent[] {
+  const highest = Math.max(0, ...wanted);
   const sides = sidesOf(kinematics, E, ring, highest, negativeSide);
   const finite = (n: number) => finitePart(kinematics, E, n, sides);
   return Array.from({ length: highest + 1 }, (_, n) => {
+    if (!wanted.includes(n)) return ring.zero;
     ring.clear();
     for (const side of sides) {
       const parity = side.sign < 0 && n % 2 ? -1 : 1;

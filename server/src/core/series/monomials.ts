@@ -28,8 +28,21 @@ export interface MonomialList {
   readonly without: readonly (readonly number[])[];
 }
 
-/** All monomials with 1 <= Σ ν_i * order_i <= `order`, by growing order and then as declared (a^2 before a*b before b^2). */
+const known = new Map<string, MonomialList>();
+const KEPT = 40;
+
+/** All monomials with 1 <= Σ ν_i * order_i <= `order`, by growing order and then as declared (a^2 before a*b before b^2). The list is kept for the next edit. */
 export function monomialsUpTo(interactions: readonly Pick<InteractionSpec, 'name' | 'order'>[], order: number): MonomialList {
+  const key = JSON.stringify([order, interactions.map(i => [i.name, i.order])]);
+  const before = known.get(key);
+  if (before) return before;
+  const list = buildList(interactions, order);
+  if (known.size >= KEPT) known.clear();
+  known.set(key, list);
+  return list;
+}
+
+function buildList(interactions: readonly Pick<InteractionSpec, 'name' | 'order'>[], order: number): MonomialList {
   const found: Monomial[] = [];
   const grow = (prefix: readonly number[], left: number): void => {
     if (prefix.length === interactions.length) {

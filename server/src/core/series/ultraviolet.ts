@@ -2,14 +2,13 @@ import type { OverallForm, Remark, Ultraviolet } from '../results';
 import type { Complex } from '../algebra/expression';
 import { isMultipleOf } from './forms';
 import { contactAgrees, contactsOnLadder } from './contact-confirm';
-import { contactOverall, contactsWithOverall } from './contact-divergences';
+import { contactOverall } from './contact-divergences';
 import { fitOverall, type FittedForm, type FittedOverall } from './dense-overall';
 import { growsAs } from './growth-fit';
 import type { ScaledVertex } from './grid-chain';
 import type { StrengthLaw } from './contact-declared';
 import { fittedStrengths, minimalCounterterms } from './declared-strengths';
 import { buildLadder, type Ladder, type LadderWishes } from './ladder';
-import { isProperPart } from './monomials';
 import { partialWave, type Setup } from './setup';
 import type { SymbolicVerdicts } from './verdicts';
 import { formVertex } from './form-vertex';
@@ -24,9 +23,7 @@ export interface UltravioletResults {
 
 /** Verdicts alone: nothing confirmed, no forms yet. */
 export function symbolicUltraviolet(setup: Setup, symbolic: SymbolicVerdicts): Ultraviolet[] {
-  const overall = symbolic.contacts ? contactsWithOverall(symbolic.contacts) : [];
-  const leftOver = symbolic.terms.map((t, n) => overall[n] ?? (t.overallDegree >= 0 && t.verdict === 'diverges'));
-  return symbolic.terms.map((_, n) => assemble(setup, symbolic, n, leftOver, [], false));
+  return symbolic.terms.map((_, n) => assemble(setup, symbolic, n, symbolic.leftOver, [], false));
 }
 
 /** Verdicts, forms with coefficients, and the numerical confirmation. */
@@ -65,8 +62,7 @@ function assemble(
   confirmed: boolean,
 ): Ultraviolet {
   const t = symbolic.terms[n];
-  const { exponents } = setup.list.terms[n];
-  const nestedIn = setup.list.terms.flatMap((inner, m) => (leftOver[m] && isProperPart(inner.exponents, exponents) ? [inner.name] : []));
+  const nestedIn = setup.list.splits(n).flatMap(({ inner }) => (leftOver[inner] ? [setup.list.terms[inner].name] : []));
   return {
     verdict: t.verdict,
     conditional: t.conditional,
