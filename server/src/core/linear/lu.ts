@@ -14,36 +14,75 @@ export function factor(n: number, re: Float64Array, im: Float64Array | null): Fa
   return im ? factorComplex(n, re, im) : factorReal(n, re);
 }
 
+/** Columns eliminated at a time: each entry of the rest is then read and written once for four of them. */
+const BLOCK = 4;
+
 function factorReal(n: number, a: Float64Array): Factored {
   const pivots = new Int32Array(n);
-  let sign: 1 | -1 = 1;
-  let singular = false;
-  for (let c = 0; c < n; c++) {
+  const state = { sign: 1 as 1 | -1, singular: false };
+  for (let start = 0; start < n; start += BLOCK) {
+    const end = Math.min(start + BLOCK, n);
+    factorPanel(n, a, start, end, pivots, state);
+    // The block's rows to the right of it, then everything below those.
+    for (let r = start + 1; r < end; r++) {
+      for (let c = start; c < r; c++) {
+        const f = a[r * n + c];
+        for (let j = end; j < n; j++) a[r * n + j] -= f * a[c * n + j];
+      }
+    }
+    if (end - start === BLOCK) updateBelow(n, a, start, end);
+  }
+  return { n, re: a, im: null, pivots, sign: state.sign, singular: state.singular };
+}
+
+/** Gaussian elimination within columns start..end, rows exchanged as a whole. */
+function factorPanel(
+  n: number,
+  a: Float64Array,
+  start: number,
+  end: number,
+  pivots: Int32Array,
+  state: { sign: 1 | -1; singular: boolean },
+): void {
+  for (let c = start; c < end; c++) {
     let p = c;
     let largest = Math.abs(a[c * n + c]);
     for (let r = c + 1; r < n; r++) {
       const v = Math.abs(a[r * n + c]);
-      if (v > largest) [largest, p] = [v, r];
+      if (v > largest) {
+        largest = v;
+        p = r;
+      }
     }
     pivots[c] = p;
     if (largest === 0 || !Number.isFinite(largest)) {
-      singular = true;
+      state.singular = true;
       continue;
     }
     if (p !== c) {
-      sign = sign === 1 ? -1 : 1;
+      state.sign = state.sign === 1 ? -1 : 1;
       swapRows(a, n, p, c);
     }
     const inverse = 1 / a[c * n + c];
-    const top = c * n;
     for (let r = c + 1; r < n; r++) {
-      const row = r * n;
-      const f = (a[row + c] *= inverse);
-      if (f === 0) continue;
-      for (let j = c + 1; j < n; j++) a[row + j] -= f * a[top + j];
+      const f = (a[r * n + c] *= inverse);
+      for (let j = c + 1; j < end; j++) a[r * n + j] -= f * a[c * n + j];
     }
   }
-  return { n, re: a, im: null, pivots, sign, singular };
+}
+
+function updateBelow(n: number, a: Float64Array, start: number, end: number): void {
+  const top = start * n;
+  for (let r = end; r < n; r++) {
+    const at = r * n + start;
+    const f0 = a[at];
+    const f1 = a[at + 1];
+    const f2 = a[at + 2];
+    const f3 = a[at + 3];
+    for (let j = end, to = r * n + end, u = top + end; j < n; j++, to++, u++) {
+      a[to] -= f0 * a[u] + f1 * a[u + n] + f2 * a[u + 2 * n] + f3 * a[u + 3 * n];
+    }
+  }
 }
 
 function factorComplex(n: number, a: Float64Array, b: Float64Array): Factored {

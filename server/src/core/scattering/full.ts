@@ -26,15 +26,16 @@ export function boundStateDeterminant(potential: PotentialMatrix, problem: LoopW
 
 /** 1 - V g, column by column. */
 function oneMinusLoop({ size, re, im }: PotentialMatrix, { g }: LoopWeights): [Float64Array, Float64Array | null] {
+  return [minusLoop(size, re, g.re, 1), im && minusLoop(size, im, g.re, 0)];
+}
+
+function minusLoop(size: number, v: Float64Array, g: Float64Array, diagonal: number): Float64Array {
   const a = new Float64Array(size * size);
-  const b = im && new Float64Array(size * size);
   for (let r = 0, at = 0; r < size; r++) {
-    for (let c = 0; c < size; c++, at++) {
-      a[at] = (r === c ? 1 : 0) - re[at] * g.re[c];
-      if (b) b[at] = -im[at] * g.re[c];
-    }
+    for (let c = 0; c < size; c++, at++) a[at] = -v[at] * g[c];
+    a[r * size + r] += diagonal;
   }
-  return [a, b];
+  return a;
 }
 
 const transpose = (m: Complex[][]): Complex[][] => m.map((_, row) => m.map(column => column[row]));

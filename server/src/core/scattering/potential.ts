@@ -1,5 +1,5 @@
 import type { Complex } from '../algebra/expression';
-import { kernelColumn, kernelRows } from '../model/kernel-on-grid';
+import { kernelColumn } from '../model/kernel-on-grid';
 import type { GridKernels } from '../series/dense-words';
 import type { ScaledVertex } from '../series/grid-chain';
 import type { LoopWeights } from '../series/loop-weights';
@@ -34,19 +34,11 @@ export function potentialMatrix(kernels: GridKernels, parts: readonly ScaledVert
         1,
       );
     }
-    const rows = kernelRows(vertex.element, kernels.grid, onShell, vertex.ridge, problem.E.re);
     for (let s = 0; s < onShell.length; s++) {
-      accumulate(
-        rows.re.subarray(s * nodes, (s + 1) * nodes),
-        rows.im.subarray(s * nodes, (s + 1) * nodes),
-        strength,
-        re,
-        im,
-        (nodes + s) * size,
-        1,
-      );
+      const row = kernels.row(vertex, onShell[s], problem.E.re);
+      accumulate(row.re, row.im, strength, re, im, (nodes + s) * size, 1);
       const column = kernelColumn(vertex.element, loop, onShell[s], problem.E.re);
-      accumulate(column.re, column.im, strength, re, im, nodes + s, size);
+      accumulate(column.re, vertex.element.real ? null : column.im, strength, re, im, nodes + s, size);
     }
   }
   return { size, re, im };
@@ -61,6 +53,10 @@ function accumulate(
   start: number,
   stride: number,
 ): void {
+  if (!y && s.im === 0) {
+    for (let j = 0, at = start; j < x.length; j++, at += stride) re[at] += s.re * x[j];
+    return;
+  }
   for (let j = 0, at = start; j < x.length; j++, at += stride) {
     re[at] += s.re * x[j] - (y ? s.im * y[j] : 0);
     if (im) im[at] += s.im * x[j] + (y ? s.re * y[j] : 0);
