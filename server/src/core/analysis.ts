@@ -57,7 +57,10 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   const needed = cost(setup);
   if (needed > options.budget) {
     const message = `The numbers of this model would take about ${needed.toPrecision(2)} evaluations and ${options.budget.toPrecision(2)} are allowed: a lower order, fewer cutoffs or fewer momenta make it smaller.`;
-    return { ...symbolicResults(spec), remarks: [...remarks, { code: 'budget', message, subject: null }] };
+    const results = symbolicResults(spec);
+    // What has not been confirmed by numbers is no verdict.
+    const terms = results.terms.map(t => ({ ...t, ultraviolet: undecided(t.ultraviolet), status: null }));
+    return { ...results, terms, remarks: [...remarks, { code: 'budget', message, subject: null }] };
   }
   options.progress?.(0, 'divergences');
   const ultraviolet = fullUltraviolet(setup, symbolic, stop);
@@ -67,9 +70,7 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
     setup.counterterms.length && symbolic.terms.some((t, n) => !t.contact || !declared.scheme?.growth[n])
       ? renormalisedConverges(setup, laws, stop)
       : null;
-  const terms = ultraviolet.terms.map((t): Ultraviolet =>
-    t.confirmed || t.verdict === 'undecided' ? t : { ...t, verdict: 'undecided', power: null, log: null },
-  );
+  const terms = ultraviolet.terms.map(t => (t.confirmed || t.verdict === 'undecided' ? t : undecided(t)));
   const status = statuses(setup, symbolic, terms, declared, dense);
   options.progress?.(0.3, 'amplitudes');
   const points = asked.points;
@@ -111,6 +112,8 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
     remarks: [...remarks, ...ultraviolet.remarks, ...infrared.remarks],
   };
 }
+
+const undecided = (t: Ultraviolet): Ultraviolet => ({ ...t, verdict: 'undecided', power: null, log: null });
 
 function termResult(
   setup: Setup,

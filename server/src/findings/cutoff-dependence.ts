@@ -10,7 +10,7 @@ const notable = 0.001;
 
 /**
  * The renormalised sum still moves with the cutoff although every divergence is cancelled. Stands on the monomial that
- * moves most, at the momentum where the sum does. A warning where an expectation speaks of drift, else information.
+ * moves most where that is known at the momentum where the sum moves most. A warning where an expectation speaks of drift, else information.
  */
 export const cutoffDependence: FindingRule = {
   code: 'cutoff-dependence',
@@ -21,7 +21,7 @@ export const cutoffDependence: FindingRule = {
       null,
     );
     if (!worst || !(worst.drift >= notable)) return [];
-    const term = mover(model);
+    const term = mover(model, worst.p);
     const through = term ? `, most of it through ${term.monomial}` : '';
     return [
       {
@@ -35,8 +35,9 @@ export const cutoffDependence: FindingRule = {
   }),
 };
 
-/** The term whose renormalised amplitude changes most over the upper half of the scan (logarithmic, so by index). */
-function mover(model: Evaluated): TermResult | undefined {
+/** The term whose renormalised amplitude changes most over the upper half of the scan, where the scan is at this momentum. */
+function mover(model: Evaluated, p: number | undefined): TermResult | undefined {
+  if (model.results.terms.every(({ scan }) => scan?.p !== p)) return undefined;
   const change = ({ scan }: TermResult): number => {
     const upper = scan?.renormalised.slice(Math.floor(scan.renormalised.length / 2)) ?? [];
     const last = upper[upper.length - 1];

@@ -36,7 +36,8 @@ export function divergences(model: Evaluated): Divergence[] {
 
 function kindOf(model: Evaluated, term: TermResult, hasOwn: boolean, open: boolean): Divergence['kind'] {
   const { nested, nestedIn, overall, verdict } = term.ultraviolet;
-  if (!model.complete && term.status === null) return nested && overall.length === 0 && !hasOwn ? 'nested' : 'own';
+  // Forms come with the numbers.
+  if (!model.complete) return nested && overall.length === 0 && !hasOwn ? 'nested' : 'own';
   if (verdict === 'oscillates' || !open) return overall.length > 0 || !nested ? 'own' : 'nested';
   const openInside = nestedIn.some(inner => termOf(model, inner)?.status === 'uncancelled');
   if (overall.length === 0) return openInside && !hasOwn ? 'nested' : 'nonlocal';

@@ -9,7 +9,7 @@ export interface Settings {
   readonly keystrokeBudget: number;
 }
 
-export const standardSettings: Settings = { defaults: standardDefaults, keystrokeBudget: 2e8 };
+export const standardSettings: Settings = { defaults: standardDefaults, keystrokeBudget: 5e9 };
 
 /** Above this order the number of monomials grows beyond what a person can read. */
 export const highestOrder = 12;

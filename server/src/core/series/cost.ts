@@ -1,19 +1,34 @@
-import type { Setup } from './setup';
+import { kernelScales, oscillationLength, type Setup } from './setup';
 
-/** Nodes of a grid, roughly. */
-const NODES = 200;
+/** Nodes of a grid: about so many panels of so many points. */
+const NODES = 250;
+const RUNGS = 13;
+/** From the lowest to the highest cutoff of the ladder, in units of the soft momentum. */
+const LADDER_TOP = 1600;
 
-/** About how many multiplications the numbers of a model take: an order of magnitude, but a reproducible one. */
+/** About how many multiplications the numbers of a model take: an order of magnitude, but the same on every machine. */
 export function cost(setup: Setup): number {
-  const { list, vertices, spec, counterterms, size } = setup;
+  const { list, vertices, spec, counterterms, size, kinematics } = setup;
   const terms = list.terms.length;
   const links = list.terms.reduce((sum, t) => sum + t.exponents.reduce((product, n) => product * (n + 1), 1), 0);
-  const dense = vertices.filter(v => !v.contact).length;
-  const cutoffs = 20 + (spec.cutoff.scan?.points ?? 0);
+  const dense = vertices.map((v, i) => ({ v, i })).filter(({ v }) => !v.contact);
+  const words = list.terms.filter(t => t.exponents.every((m, i) => m === 0 || !vertices[i].contact)).length;
+  const nodes = nodesOf(setup) * (kinematics.signed ? 2 : 1);
+  const scan = spec.cutoff.scan?.points ?? 0;
   const momenta = spec.series.points.length + spec.expectations.length;
   const runs = counterterms.length ? 2 : 1;
-  const algebra = links * size ** 3 * 400;
-  const grids = cutoffs * dense * NODES * NODES * 30;
-  const products = runs * cutoffs * (momenta / 2 + 1) * (terms * vertices.length * (dense ? NODES * NODES : NODES) + links * 10);
-  return algebra + grids + products;
+  const algebra = links * size ** 3 * 300;
+  const grids = (RUNGS + scan + 3) * dense.length * nodes * (20 * nodes + 15_000);
+  const columns = RUNGS * 2 * (size + 4) + runs * (scan + 5 * momenta) * (size + 1);
+  const small = runs * (scan + 5 * momenta) * (terms * nodes + links * 50);
+  return algebra + grids + words * columns * nodes * nodes + small;
+}
+
+/** An oscillating kernel needs panels as narrow as its oscillation all the way to the cutoff. */
+function nodesOf(setup: Setup): number {
+  const length = oscillationLength(setup.vertices);
+  if (length === 0) return NODES;
+  const soft = Math.max(setup.momentum, ...kernelScales(setup.vertices), 2 / length);
+  const { value, scan } = setup.spec.cutoff;
+  return NODES + 3 * length * Math.max(value, scan?.to ?? 0, LADDER_TOP * soft);
 }

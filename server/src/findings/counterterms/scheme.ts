@@ -23,7 +23,8 @@ export function schemesFor(model: Evaluated): { readonly onShell: Scheme; readon
     };
   }
   // A series without momenta: a tenth of the cutoff lies where the theory is meant to hold.
-  const at = momenta.length > 0 ? lowest : Number((spec.cutoff.value / 10).toPrecision(2));
+  // A momentum that comes from an energy has digits that nobody would write.
+  const at = momenta.length > 0 ? Number(lowest.toPrecision(4)) : Number((spec.cutoff.value / 10).toPrecision(2));
   const written = (momenta.length > 0 && asInText(model, lowest)) || inUnit(at, spec);
   return { onShell: { words: `at p = ${written}`, onShellAt: at }, minimal: { words: `minimal at ${written}`, onShellAt: null } };
 }
