@@ -86,7 +86,10 @@ function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][numb
 function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly boolean[]): LadderWishes {
   const degree = Math.max(-1, ...symbolic.terms.map((t, n) => (dense[n] ? t.overallDegree : -1)));
   const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
-  if (degree < 0) return { rungs: dense.some(Boolean) ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: 12, powers: [], steepest };
+  if (degree < 0) {
+    const some = dense.some(Boolean);
+    return { rungs: some ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: some ? 12 : 16, powers: [], steepest };
+  }
   const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a)
     .filter(a => setup.kinematics.signed || a % 2 === 0)
     .map(a => a + partialWave(setup.spec.wave));
