@@ -40,7 +40,7 @@ function localElement(piece: LocalPiece, spec: ModelSpec): Element {
 }
 
 function shapeOf(piece: LocalPiece): LocalShape {
-  const { coefficient: c, centre, odd, tail, smooth, origin, transfer, scale } = piece;
+  const { coefficient: c, centre, odd, tail, smooth, origin, transfer, scale, family } = piece;
   const terms = (direction: 1 | -1): readonly TailTerm[] | null =>
     tail &&
     tail.map(t => {
@@ -52,7 +52,7 @@ function shapeOf(piece: LocalPiece): LocalShape {
         phase: t.phase - direction * centre,
       };
     });
-  return { kind: 'local', tail: terms(1), backwardTail: terms(-1), transfer, smooth, origin, scale };
+  return { kind: 'local', tail: terms(1), backwardTail: terms(-1), transfer, smooth, origin, scale, contact: family.kind === 'contact' };
 }
 
 /** Even and odd waves do not couple only if V(q) = V(-q). */

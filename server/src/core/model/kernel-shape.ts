@@ -34,6 +34,8 @@ export interface LocalShape {
   readonly origin: Complex | null;
   /** Momentum over which V(q) changes: about the inverse range. 0: V(q) is singular at q = 0, as for a massless exchange. */
   readonly scale: number;
+  /** A delta or its derivative: V(q) is its `tail` everywhere. */
+  readonly contact: boolean;
 }
 
 /** What a kernel is in momentum space, for power counting. */

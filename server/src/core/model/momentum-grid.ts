@@ -85,7 +85,7 @@ function breakpoints(high: number, sharp: boolean, { smallest, external, kernelS
   const refined = breaks.slice(0, 1);
   for (let j = 1; j < breaks.length; j++) {
     const [from, to] = [breaks[j - 1], breaks[j]];
-    const pieces = from < external && to - from > kernelScale ? 2 ** Math.min(6, Math.ceil(Math.log2((to - from) / kernelScale))) : 1;
+    const pieces = from < external && to - from > kernelScale ? 2 ** Math.min(13, Math.ceil(Math.log2((to - from) / kernelScale))) : 1;
     for (let i = 1; i <= pieces; i++) refined.push(from + ((to - from) * i) / pieces);
   }
   if (sharp && Number.isFinite(edgeWidth)) {

@@ -10,7 +10,7 @@ export function shiftedContact({ coefficient, power, centre }: ContactPower): Lo
     value(q, out) {
       for (let j = 0; j < q.length; j++) out[j] = q[j] ** power;
     },
-    family: { kind: 'other' },
+    family: { kind: 'contact' },
     scale: 1 / Math.abs(centre),
     tail: [{ coefficient: { re: 1, im: 0 }, power, log: 0, phase: 0 }],
     smooth: false,

@@ -34,6 +34,8 @@ export type Family =
   | { readonly kind: 'well'; readonly radius: number }
   /** A potential with edges, in dimensions 2 and 3; the panels hold r V(r). */
   | { readonly kind: 'edged'; readonly panels: Panels }
+  /** q^power: a delta or its derivative. */
+  | { readonly kind: 'contact' }
   | { readonly kind: 'other' };
 
 export interface PoleTerm {

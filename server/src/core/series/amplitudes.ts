@@ -3,7 +3,7 @@ import type { LaurentTerm } from '../algebra/laurent';
 import { solveSmall } from '../linear/solve';
 import { momentumGrid, type GridWishes, type MomentumGrid } from '../model/momentum-grid';
 import { GridKernels } from './dense-words';
-import { contactPowers, GridChain, type ScaledVertex } from './grid-chain';
+import { contactStates, GridChain, type ScaledVertex } from './grid-chain';
 import type { StrengthLaw } from './contact-declared';
 import { loopWeights, type LoopWeights } from './loop-weights';
 import { kernelScales, oscillationLength, type Setup } from './setup';
@@ -166,7 +166,7 @@ function runRenormalised(
   };
   groups.flat().forEach(group => group.points.forEach(indexOf));
   const all = [...problems, ...extra.map(p => weightsAt(at, p.E, p.onShell, p.onShell ? [] : externalsAt(kinematics, p.momentum)))];
-  const chain = new GridChain(list, vertices, at.kernels, all, contactPowers(counterterms.map(c => c.vertex)));
+  const chain = new GridChain(list, vertices, at.kernels, all, contactStates(counterterms.map(c => c.vertex)));
   const strengths: Strength[] = [];
   const standing = list.terms.map((_, n) => {
     chain.step(n);

@@ -11,8 +11,8 @@ export function cost(setup: Setup): number {
   const { list, vertices, spec, counterterms, size, kinematics } = setup;
   const terms = list.terms.length;
   const links = list.terms.reduce((sum, t) => sum + t.exponents.reduce((product, n) => product * (n + 1), 1), 0);
-  const dense = vertices.map((v, i) => ({ v, i })).filter(({ v }) => !v.contact);
-  const words = list.terms.filter(t => t.exponents.every((m, i) => m === 0 || !vertices[i].contact)).length;
+  const dense = vertices.map((v, i) => ({ v, i })).filter(({ v }) => !v.finiteRank);
+  const words = list.terms.filter(t => t.exponents.every((m, i) => m === 0 || !vertices[i].finiteRank)).length;
   const nodes = nodesOf(setup) * (kinematics.signed ? 2 : 1);
   const scan = spec.cutoff.scan?.points ?? 0;
   const momenta = spec.series.points.length + spec.expectations.length;

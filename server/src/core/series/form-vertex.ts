@@ -6,6 +6,7 @@ export function formVertex(form: LocalForm): Vertex {
   return {
     name: form.text,
     contact: form.terms,
+    finiteRank: form.terms.map(t => ({ ...t, phase: 0 })),
     ridge: Infinity,
     dependsOnEnergy: form.terms.some(t => t.e > 0),
     element: {

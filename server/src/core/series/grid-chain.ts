@@ -1,7 +1,6 @@
 import type { Complex } from '../algebra/expression';
-import type { MomentumTerm } from '../model/kernel-shape';
 import type { Monomial } from '../model/spec';
-import type { Vertex } from '../model/vertex';
+import type { RankTerm, Vertex } from '../model/vertex';
 import { addMultiple, DenseOperator, type Column, type GridKernels } from './dense-words';
 import type { Ending, LoopWeights } from './loop-weights';
 import { difference, type MonomialList } from './monomials';
@@ -12,10 +11,23 @@ export interface ScaledVertex {
   readonly strength: Complex;
 }
 
-/** The powers of momentum that occur in contacts. */
-export const contactPowers = (vertices: readonly Vertex[]): number[] => [
-  ...new Set(vertices.flatMap(v => v.contact ?? []).flatMap(t => [t.a, t.b])),
-];
+/** What a contact leaves on its left: k^power e^(i phase k); on its right it takes the moment with the conjugate. */
+export interface ContactState {
+  readonly power: number;
+  readonly phase: number;
+}
+
+/** The states of the contacts among these vertices. */
+export function contactStates(vertices: readonly Vertex[]): ContactState[] {
+  return vertices
+    .flatMap(v => v.finiteRank ?? [])
+    .flatMap(({ a, b, phase }) => [
+      { power: a, phase },
+      { power: b, phase },
+    ]);
+}
+
+const stateKey = ({ power, phase }: ContactState): string => `${power}/${phase}`;
 
 /** A vertex with the part of a monomial that it stands for: one factor for an interaction, all of it for a counterterm. */
 interface Placed<V> {
@@ -24,7 +36,7 @@ interface Placed<V> {
 }
 
 interface Contact {
-  readonly terms: readonly MomentumTerm[];
+  readonly terms: readonly RankTerm[];
   readonly strength: Complex;
 }
 
@@ -34,17 +46,17 @@ interface Numbers {
   readonly im: Float64Array;
 }
 
-/** One problem's share of one monomial. Powers are those of `basis`. */
+/** One problem's share of one monomial. `basis` are the contact states. */
 interface Share {
-  /** Σ over orderings of kernels that are no contacts, (V G)(V G)… applied to k^power: [power]; null where there is none. */
+  /** Σ over orderings of kernels that are no contacts, (V G)(V G)… applied to each contact state; null where there is none. */
   readonly dressed: readonly Column[] | null;
   /** The same ending in V(·, external k): [external]; null where there is none. */
   readonly ending: readonly Column[] | null;
-  /** ∫ k^b G dressed: [a * basis + b]. */
+  /** Moments ∫ (state b)* G (state a dressed): [a * basis + b]. */
   readonly dressedMoments: Numbers | null;
-  /** What stands behind the leftmost contact: coefficient of k^power, [column * basis + power]. */
+  /** What stands behind the leftmost contact: coefficient of each state, [column * basis + state]. */
   readonly u: Numbers;
-  /** ∫ k^b G R: [column * basis + b]. */
+  /** ∫ (state b)* G R: [column * basis + b]. */
   readonly moments: Numbers;
 }
 
@@ -52,16 +64,19 @@ interface Share {
  * The order-by-order recursion R_ν = W_ν + Σ_{0<α<ν} W_α G R_{ν-α} on a momentum grid, for several energies (problems) at once.
  * Contacts are of finite rank, so a chain falls into runs of other kernels between them: only those act on functions of momentum, each run
  * once; everything else is small matrices of loop moments. Call `step(n)` for n = 0, 1, …; before the next step a counterterm may be added.
- * `morePowers`: powers of momentum that counterterms bring in.
+ * `more`: contact states that counterterms bring in.
  */
 export class GridChain {
   private readonly shares: Share[][] = [];
   private readonly operator: DenseOperator;
   private readonly contacts: Placed<Contact>[] = [];
   private readonly dense: Placed<ScaledVertex>[] = [];
-  private readonly basis: readonly number[];
+  private readonly basis: readonly ContactState[];
+  private readonly places: ReadonlyMap<string, number>;
+  /** Moments ∫ (state b)* G (state a) of each problem: [a * basis + b]. */
+  private readonly loops: readonly Numbers[];
   private readonly nodes: number;
-  /** k^power at the points: [problem][power]. */
+  /** The contact states at the points: [problem][state]. */
   private readonly states: Column[][];
 
   constructor(
@@ -69,12 +84,16 @@ export class GridChain {
     vertices: readonly Vertex[],
     kernels: GridKernels,
     private readonly problems: readonly LoopWeights[],
-    morePowers: readonly number[] = [],
+    more: readonly ContactState[] = [],
   ) {
     this.nodes = kernels.grid.nodes.length;
     this.operator = new DenseOperator(kernels, problems);
-    this.basis = [...new Set([...contactPowers(vertices), ...morePowers])].sort((x, y) => x - y);
-    this.states = problems.map(p => this.basis.map(a => ({ re: p.points.map(k => k ** a), im: null })));
+    this.basis = [...new Map([...contactStates(vertices), ...more].map(state => [stateKey(state), state])).values()].sort(
+      (x, y) => x.phase - y.phase || x.power - y.power,
+    );
+    this.places = new Map(this.basis.map((state, at) => [stateKey(state), at]));
+    this.states = problems.map(p => this.basis.map(state => stateAt(state, p.points)));
+    this.loops = problems.map((_, at) => this.momentsBetween(at));
     vertices.forEach((vertex, i) =>
       this.place(
         vertices.map((_, j) => (i === j ? 1 : 0)),
@@ -101,17 +120,17 @@ export class GridChain {
     });
   }
 
-  /** Adds Σ strength * vertex to R_n and to every later monomial that holds it. `morePowers` must have named the powers of its contacts. */
+  /** Adds Σ strength * vertex to R_n and to every later monomial that holds it. `more` must have named the states of its contacts. */
   addCounterterm(n: number, parts: readonly ScaledVertex[]): void {
     const { exponents } = this.list.terms[n];
     for (const { vertex, strength } of parts) this.place(exponents, vertex, strength);
-    const newRuns = parts.filter(p => !p.vertex.contact).map(p => ({ ...p, rest: -1 }));
+    const newRuns = parts.filter(p => !p.vertex.finiteRank).map(p => ({ ...p, rest: -1 }));
     const goesOn = this.list.continues[n];
     const dressed = goesOn ? this.sumOfRuns(newRuns, () => this.states, null, true) : this.problems.map((): Column[] => []);
     const ending = this.sumOfRuns(newRuns, () => null, this.problems, goesOn);
     this.shares[n] = this.shares[n].map((share, at) => {
       const u = { re: share.u.re.slice(), im: share.u.im.slice() };
-      for (const { vertex, strength } of parts) if (vertex.contact) this.addContact({ terms: vertex.contact, strength }, at, -1, u);
+      for (const { vertex, strength } of parts) if (vertex.finiteRank) this.addContact({ terms: vertex.finiteRank, strength }, at, -1, u);
       return this.finish(n, at, joined(share.dressed, dressed[at]), joined(share.ending, ending[at]), u);
     });
   }
@@ -119,17 +138,17 @@ export class GridChain {
   /** R_n(external row, column) of a problem. */
   amplitude(n: number, at: number, row: number, column: number): Complex {
     const sum = this.dressedAmplitude(n, at, row, column);
-    this.contactEnd(n, at, column).forEach((c, a) => {
-      const state = this.states[at][a].re[this.nodes + row];
+    this.contactEnd(n, at, column).forEach((c, j) => {
+      const state = this.states[at][this.central[j]].re[this.nodes + row];
       sum.re += state * c.re;
       sum.im += state * c.im;
     });
     return sum;
   }
 
-  /** The powers that contacts leave of the external momenta. */
+  /** The powers that contacts at the origin leave of the external momenta. */
   get powers(): readonly number[] {
-    return this.basis;
+    return this.central.map(j => this.basis[j].power);
   }
 
   /** The powers that have columns of their own, after those of the external momenta. */
@@ -137,33 +156,36 @@ export class GridChain {
     return this.problems[0].columns.flatMap(c => (c.kind === 'power' ? [c.n] : []));
   }
 
-  /** Chains with a contact on the left: coefficients of p^power, in the order of `powers`. */
+  /** Chains with a contact at the origin on the left: coefficients of p^power, in the order of `powers`. */
   contactEnd(n: number, at: number, column: number): Complex[] {
     const { u } = this.shares[n][at];
-    return this.basis.map((_, a) => ({ re: u.re[column * this.basis.length + a], im: u.im[column * this.basis.length + a] }));
+    return this.central.map(a => ({ re: u.re[column * this.basis.length + a], im: u.im[column * this.basis.length + a] }));
   }
 
-  /** Chains with another kernel on the left, at an external row. */
+  /** Chains with anything else on the left, at an external row. */
   dressedAmplitude(n: number, at: number, row: number, column: number): { re: number; im: number } {
     const point = this.nodes + row;
     const size = this.basis.length;
-    const { ending } = this.shares[n][at];
-    const end = ending?.[column];
+    const end = this.shares[n][at].ending?.[column];
     const sum = { re: end?.re[point] ?? 0, im: end?.im?.[point] ?? 0 };
-    const add = (functions: readonly Column[], v: Numbers) => {
-      for (let a = 0; a < size; a++) {
-        const [x, y] = [functions[a].re[point], functions[a].im?.[point] ?? 0];
-        const s = column * size + a;
-        sum.re += x * v.re[s] - y * v.im[s];
-        sum.im += x * v.im[s] + y * v.re[s];
-      }
+    const add = (f: Column, v: Numbers, a: number) => {
+      const [x, y] = [f.re[point], f.im?.[point] ?? 0];
+      const s = column * size + a;
+      sum.re += x * v.re[s] - y * v.im[s];
+      sum.im += x * v.im[s] + y * v.re[s];
     };
-    this.forEachDressing(n, at, (share, behind) => add(share.dressed!, behind.u));
+    for (let a = 0; a < size; a++) if (this.basis[a].phase !== 0) add(this.states[at][a], this.shares[n][at].u, a);
+    this.forEachDressing(n, at, (share, behind) => share.dressed!.forEach((f, a) => add(f, behind.u, a)));
     return sum;
   }
 
+  /** The contact states without a phase. */
+  private get central(): readonly number[] {
+    return this.basis.flatMap(({ phase }, j) => (phase === 0 ? [j] : []));
+  }
+
   private place(content: Monomial, vertex: Vertex, strength: Complex): void {
-    if (vertex.contact) this.contacts.push({ content, part: { terms: vertex.contact, strength } });
+    if (vertex.finiteRank) this.contacts.push({ content, part: { terms: vertex.finiteRank, strength } });
     else this.dense.push({ content, part: { vertex, strength } });
   }
 
@@ -199,10 +221,12 @@ export class GridChain {
     for (const t of terms) {
       let c: Complex = { re: strength.re * t.re - strength.im * t.im, im: strength.re * t.im + strength.im * t.re };
       for (let j = 0; j < t.e; j++) c = { re: c.re * E.re - c.im * E.im, im: c.re * E.im + c.im * E.re };
-      const [a, b] = [this.basis.indexOf(t.a), this.basis.indexOf(t.b)];
+      const a = this.places.get(stateKey({ power: t.a, phase: t.phase }))!;
+      const b = this.places.get(stateKey({ power: t.b, phase: t.phase }))!;
       for (let column = 0; column < columns.length; column++) {
-        const re = moments ? moments.re[column * size + b] : powerOf(columns[column], t.b);
-        const im = moments ? moments.im[column * size + b] : 0;
+        const end = moments ? null : endOn(columns[column], this.basis[b]);
+        const re = end ? end.re : moments!.re[column * size + b];
+        const im = end ? end.im : moments!.im[column * size + b];
         u.re[column * size + a] += c.re * re - c.im * im;
         u.im[column * size + a] += c.re * im + c.im * re;
       }
@@ -220,24 +244,16 @@ export class GridChain {
       moments.re.set(ends.re);
       moments.im.set(ends.im);
     }
-    const { loopMoments } = problem;
-    for (let column = 0; column < columns; column++) {
-      for (let b = 0; b < size; b++) {
-        for (let a = 0; a < size; a++) {
-          const power = this.basis[a] + this.basis[b];
-          addProduct(moments, column * size + b, loopMoments.re[power], loopMoments.im[power], u, column * size + a);
-        }
-      }
-    }
-    this.forEachDressing(n, at, (share, behind) => {
-      const j = share.dressedMoments!;
+    const through = (j: Numbers, behind: Numbers) => {
       for (let column = 0; column < columns; column++) {
         for (let b = 0; b < size; b++) {
           for (let a = 0; a < size; a++)
-            addProduct(moments, column * size + b, j.re[a * size + b], j.im[a * size + b], behind.u, column * size + a);
+            addProduct(moments, column * size + b, j.re[a * size + b], j.im[a * size + b], behind, column * size + a);
         }
       }
-    });
+    };
+    through(this.loops[at], u);
+    this.forEachDressing(n, at, (share, behind) => through(share.dressedMoments!, behind.u));
     return { dressed, ending, dressedMoments, u, moments };
   }
 
@@ -250,31 +266,62 @@ export class GridChain {
     }
   }
 
-  /** ∫ k^b G f: [function * basis + b]. */
-  private momentsOf(functions: readonly Column[], at: number): Numbers {
-    const { g } = this.problems[at];
+  /** ∫ (state a) G (state b)*, from the moments of powers where their phases are the same. */
+  private momentsBetween(at: number): Numbers {
+    const { loopMoments } = this.problems[at];
     const size = this.basis.length;
-    const result = zeros(functions.length * size);
-    functions.forEach((f, c) => {
-      for (let b = 0; b < size; b++) {
-        const k = this.states[at][b].re;
+    const result = zeros(size * size);
+    this.basis.forEach((left, a) =>
+      this.basis.forEach((right, b) => {
+        const same = left.phase === right.phase;
+        const direct = same ? null : this.momentsOf([this.states[at][a]], at, [b]);
+        result.re[a * size + b] = direct ? direct.re[0] : loopMoments.re[left.power + right.power];
+        result.im[a * size + b] = direct ? direct.im[0] : loopMoments.im[left.power + right.power];
+      }),
+    );
+    return result;
+  }
+
+  /** ∫ (state)* G f for each function and each of the states named: [function * states + state]. */
+  private momentsOf(functions: readonly Column[], at: number, states = this.basis.map((_, b) => b)): Numbers {
+    const { g, E } = this.problems[at];
+    const result = zeros(functions.length * states.length);
+    functions.forEach((f, c) =>
+      states.forEach((b, s) => {
+        const { re: k, im: oscillation } = this.states[at][b];
+        const complex = f.im !== null || oscillation !== null || E.im !== 0;
         let re = 0;
         let im = 0;
-        for (let j = 0; j < g.re.length; j++) re += k[j] * (g.re[j] * f.re[j] - (f.im ? g.im[j] * f.im[j] : 0));
-        if (f.im || this.problems[at].E.im !== 0)
-          for (let j = 0; j < g.re.length; j++) im += k[j] * (g.im[j] * f.re[j] + (f.im ? g.re[j] * f.im[j] : 0));
-        result.re[c * size + b] = re;
-        result.im[c * size + b] = im;
-      }
-    });
+        if (!complex) for (let j = 0; j < g.re.length; j++) re += k[j] * g.re[j] * f.re[j];
+        else {
+          for (let j = 0; j < g.re.length; j++) {
+            const y = f.im ? f.im[j] : 0;
+            const x = g.re[j] * f.re[j] - g.im[j] * y;
+            const z = g.re[j] * y + g.im[j] * f.re[j];
+            const o = oscillation ? -oscillation[j] : 0;
+            re += k[j] * x - o * z;
+            im += k[j] * z + o * x;
+          }
+        }
+        result.re[c * states.length + s] = re;
+        result.im[c * states.length + s] = im;
+      }),
+    );
     return result;
   }
 }
 
-/** k^b of the external momentum, as a contact meets it. */
-function powerOf(column: Ending, b: number): number {
-  if (column.kind === 'power') return column.n === b ? 1 : 0;
-  return column.contacts ? column.k ** b : 0;
+function stateAt({ power, phase }: ContactState, k: Float64Array): Column {
+  const size = k.map(x => x ** power);
+  if (phase === 0) return { re: size, im: null };
+  return { re: size.map((v, j) => v * Math.cos(phase * k[j])), im: size.map((v, j) => v * Math.sin(phase * k[j])) };
+}
+
+/** (state)* at the external momentum, as a contact meets it. */
+function endOn(column: Ending, { power, phase }: ContactState): Complex {
+  if (column.kind === 'power') return { re: column.n === power && phase === 0 ? 1 : 0, im: 0 };
+  if (phase === 0) return { re: column.contacts ? column.k ** power : 0, im: 0 };
+  return { re: column.k ** power * Math.cos(phase * column.k), im: -(column.k ** power) * Math.sin(phase * column.k) };
 }
 
 const isPart = (inner: Monomial, outer: Monomial): boolean => inner.every((m, i) => m <= outer[i]);

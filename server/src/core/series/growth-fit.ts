@@ -26,7 +26,8 @@ export function growthFromNumbers(cutoffs: readonly number[], y: readonly Comple
   if (Math.max(...tail) <= NOISE * size || size === 0) return { verdict: 'converges', power: 0, log: 0 };
   const slopes = tail.slice(1).map((d, j) => Math.log(d / tail[j]) / step);
   const slope = slopes[slopes.length - 1];
-  if (!Number.isFinite(slope) || Math.max(...slopes) - Math.min(...slopes) > 0.35) return { verdict: 'unclear', power: 0, log: 0 };
+  if (!Number.isFinite(slope) || Math.max(...slopes) - Math.min(...slopes) > 0.35)
+    return { verdict: envelopeFalls(differences.map(modulus), step) ? 'converges' : 'unclear', power: 0, log: 0 };
   if (slope < -0.45) return { verdict: 'converges', power: 0, log: 0 };
   // A logarithm adds b/ln L to the slope: it never reaches half a power on the ladder.
   const power = Math.max(0, Math.round(2 * (slope - 0.12)) / 2);
@@ -42,6 +43,14 @@ export function growthFromNumbers(cutoffs: readonly number[], y: readonly Comple
     scaled = next;
   }
   return { verdict: 'unclear', power: 0, log: 0 };
+}
+
+/** An oscillating sequence: does the largest difference fall as a power from each third of the ladder to the next? */
+function envelopeFalls(differences: readonly number[], step: number): boolean {
+  const count = Math.floor(differences.length / 3);
+  const [first, second, third] = [3, 2, 1].map(j => Math.max(...differences.slice(-j * count, differences.length - (j - 1) * count)));
+  const fall = Math.exp(-0.45 * step * count);
+  return count > 1 && second < fall * first && third < fall * second;
 }
 
 /**

@@ -3,7 +3,7 @@ import { momentumGrid } from '../model/momentum-grid';
 import { gridWishes } from './amplitudes';
 import { energyAway } from './contact-divergences';
 import { GridKernels } from './dense-words';
-import { contactPowers, GridChain, type ScaledVertex } from './grid-chain';
+import { contactStates, GridChain, type ScaledVertex } from './grid-chain';
 import { loopWeights } from './loop-weights';
 import { kernelScales, oscillationLength, type Setup } from './setup';
 import { externalsAt } from './subtraction';
@@ -102,9 +102,16 @@ export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
     },
     fitting: () => {
       const highest = 2 * Math.max(setup.size, ...wishes.powers);
+      const centralPowers = [...new Set(contactStates(vertices).flatMap(({ power, phase }) => (phase === 0 ? [power] : [])))];
       const chains = rungs.map(({ grid, kernels }) => {
-        const problems = energies.map(E => loopWeights(kinematics, regulator, grid, E, false, externals, highest, contactPowers(vertices)));
-        return new GridChain(list, vertices, kernels, problems, wishes.powers);
+        const problems = energies.map(E => loopWeights(kinematics, regulator, grid, E, false, externals, highest, centralPowers));
+        return new GridChain(
+          list,
+          vertices,
+          kernels,
+          problems,
+          wishes.powers.map(power => ({ power, phase: 0 })),
+        );
       });
       return {
         cutoffs,

@@ -39,8 +39,12 @@ export function countPowers(term: Term, behaviours: readonly HardBehaviour[], di
     const degree = Math.max(...regions.slice(1).map(r => r.degree));
     if (degree === -Infinity) continue;
     const largest = regions.flatMap((r, subset) => (r && r.degree === degree ? [{ subset, ...r }] : []));
-    const log = Math.max(...largest.map(r => r.log)) + longestChain(largest.map(r => r.subset)) - (degree > 0 ? 1 : 0);
-    const oscillates = largest.every(r => r.oscillates);
+    const steady = largest.filter(r => !r.oscillates);
+    const oscillates = steady.length === 0;
+    // No logarithm comes out of an oscillating integral, nor out of the last power.
+    const regionsOfLog = oscillates ? largest : steady;
+    const log =
+      Math.max(...regionsOfLog.map(r => r.log)) + longestChain(regionsOfLog.map(r => r.subset)) - (degree > 0 || oscillates ? 1 : 0);
     if (degree > best.degree || (degree === best.degree && (log > best.log || !oscillates)))
       best = { degree, log: degree === best.degree ? Math.max(log, best.log) : log, oscillates };
   }

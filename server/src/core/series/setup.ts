@@ -35,7 +35,7 @@ export function setUp(spec: ModelSpec): { setup: Setup | null; remarks: readonly
   const couplings = new Map(spec.couplings.map(c => [c.name, c.value]));
   const lower = (interaction: InteractionSpec): Vertex | null => {
     try {
-      return vertexOf(interaction.name, matrixElement(interaction, spec, couplings));
+      return vertexOf(interaction.name, matrixElement(interaction, spec, couplings), spec.dimension === 1 && spec.wave.kind === 'full');
     } catch (error) {
       if (!(error instanceof KernelError)) throw error;
       remarks.push({ code: error.code, message: error.message, subject: interaction.name });
@@ -101,12 +101,12 @@ export function kernelScales(vertices: readonly Vertex[]): number[] {
     .filter(scale => scale > 0 && Number.isFinite(scale));
 }
 
-/** Largest length of an oscillation e^(i phase k) of a kernel; 0 where there is none. */
+/** Largest length of an oscillation e^(i phase k) in a loop, where two kernels meet; 0 where there is none. */
 export function oscillationLength(vertices: readonly Vertex[]): number {
   const phases = vertices
     .flatMap(v => localParts(v.element.shape))
     .flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])]);
-  return Math.max(0, ...phases.map(t => Math.abs(t.phase)));
+  return 2 * Math.max(0, ...phases.map(t => Math.abs(t.phase)));
 }
 
 /** l, |m|, or 1 for the odd wave: amplitudes start with p^l k^l. */

@@ -43,11 +43,12 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
     return withUniversality(setup, list);
   });
   const leftOver = forms.map(f => f.length > 0);
+  const local = symbolic.terms.map((_, n) => exact[n]?.local ?? fitted[n]?.local ?? true);
   const terms = symbolic.terms.map((t, n) => {
-    const local = exact[n]?.local ?? fitted[n]?.local ?? true;
-    const agrees = (confirmed[n] ?? false) && local;
+    const unknown = local[n] ? setup.list.splits(n).find(({ inner }) => !local[inner])?.inner : n;
+    const agrees = (confirmed[n] ?? false) && unknown === undefined;
     if (t.verdict !== 'undecided' && !t.tooSoft && !agrees)
-      remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, local) });
+      remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, unknown) });
     return assemble(setup, symbolic, n, leftOver, forms[n], agrees);
   });
   return { terms, strengths, remarks };
@@ -75,9 +76,12 @@ function assemble(
   };
 }
 
-function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][number], local: boolean): string {
+/** `unknown`: a monomial of which no local forms are left, n itself or one nested in it. */
+function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][number], unknown: number | undefined): string {
   const name = setup.list.terms[n].name;
-  if (!local)
+  if (unknown !== undefined && unknown !== n)
+    return `What is left of ${name} is open: ${setup.list.terms[unknown].name}, nested in it, could not be subtracted.`;
+  if (unknown === n)
     return `What is left of ${name} after subtracting everything nested is neither a polynomial in p, k, E nor one of the kernels: no counterterm is offered.`;
   const said = t.verdict === 'converges' ? 'it converges' : `it grows as L^${t.power}${t.log ? ` ln^${t.log} L` : ''}`;
   return `Whether ${name} diverges is open: power counting says that ${said}, the numbers on a ladder of cutoffs do not bear it out.`;
