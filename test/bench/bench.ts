@@ -96,7 +96,7 @@ async function keystroke(): Promise<void> {
 
 async function wholeCheck(): Promise<void> {
   const hooks = { shouldStop: () => false, budget: Infinity, full: false };
-  const warm = await times(12, round => checkComplete(edited(round), defaults, overrides, hooks, new ResultsCache()));
+  const warm = await times(24, round => checkComplete(edited(round), defaults, overrides, hooks, new ResultsCache()));
   print('whole check, warm', warm, '');
   const cold = await times(6, () =>
     spawnSync(process.execPath, [join(root, 'dist/cli.js'), 'check', join(root, 'test/bench/sixty-lines.tare')]),

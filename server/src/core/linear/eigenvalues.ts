@@ -86,7 +86,7 @@ function lastComponent(matrix: readonly (readonly Complex[])[], value: Complex):
   const shift = 1e-10 * (modulus(value) || 1);
   let x: Complex[] = Array.from({ length: n }, (_, j) => ({ re: 1, im: 0.1 * j }));
   for (let round = 0; round < 2; round++) {
-    x = solveDense(
+    x = solveHessenberg(
       matrix.map((row, i) => row.map((c, j) => (i === j ? { re: c.re - value.re - shift, im: c.im - value.im } : c))),
       x,
     );
@@ -96,25 +96,23 @@ function lastComponent(matrix: readonly (readonly Complex[])[], value: Complex):
   return modulus(x[n - 1]);
 }
 
-function solveDense(a: Complex[][], b: readonly Complex[]): Complex[] {
+/** Only one element stands below each diagonal one. */
+function solveHessenberg(a: Complex[][], b: readonly Complex[]): Complex[] {
   const n = b.length;
   const rows = a.map((row, i) => [...row, b[i]]);
-  for (let c = 0; c < n; c++) {
-    let p = c;
-    for (let i = c + 1; i < n; i++) if (modulus(rows[i][c]) > modulus(rows[p][c])) p = i;
-    [rows[c], rows[p]] = [rows[p], rows[c]];
-    const pivot = modulus(rows[c][c]) === 0 ? { re: 1e-300, im: 0 } : rows[c][c];
-    for (let i = c + 1; i < n; i++) {
-      const f = divide(rows[i][c], pivot);
-      for (let j = c; j <= n; j++) rows[i][j] = minus(rows[i][j], multiply(f, rows[c][j]));
-    }
+  // A matrix is shifted onto its eigenvalue here: what should vanish is as good as any small number.
+  const floor = 1e-30 * Math.max(Number.MIN_VALUE / 1e-30, ...a.flat().map(modulus));
+  const pivotAt = (i: number): Complex => (modulus(rows[i][i]) < floor ? { re: floor, im: 0 } : rows[i][i]);
+  for (let c = 0; c + 1 < n; c++) {
+    if (modulus(rows[c + 1][c]) > modulus(rows[c][c])) [rows[c], rows[c + 1]] = [rows[c + 1], rows[c]];
+    const f = divide(rows[c + 1][c], pivotAt(c));
+    for (let j = c; j <= n; j++) rows[c + 1][j] = minus(rows[c + 1][j], multiply(f, rows[c][j]));
   }
   const x: Complex[] = new Array<Complex>(n);
   for (let i = n - 1; i >= 0; i--) {
     let sum = rows[i][n];
     for (let j = i + 1; j < n; j++) sum = minus(sum, multiply(rows[i][j], x[j]));
-    const pivot = modulus(rows[i][i]) === 0 ? { re: 1e-300, im: 0 } : rows[i][i];
-    x[i] = divide(sum, pivot);
+    x[i] = divide(sum, pivotAt(i));
   }
   return x;
 }

@@ -36,7 +36,9 @@ export function localElements(kernel: Expr, argument: 'q' | 'x' | 'r', spec: Mod
 
 function localElement(piece: LocalPiece, spec: ModelSpec): Element {
   const projected = project(piece, spec);
-  return { ...projected, add: (p, k, _E, re, im) => projected.add(p, k, re, im), shape: shapeOf(piece) };
+  // A function of |p - k|, projected, or of p - k kept even by the wave.
+  const symmetric = spec.dimension > 1 || spec.wave.kind !== 'full';
+  return { ...projected, symmetric, add: (p, k, _E, re, im) => projected.add(p, k, re, im), shape: shapeOf(piece) };
 }
 
 function shapeOf(piece: LocalPiece): LocalShape {

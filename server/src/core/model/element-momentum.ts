@@ -29,6 +29,7 @@ export function contactElement(all: readonly MomentumTerm[], wave: Wave): Elemen
       }
     },
     real: terms.every(t => t.im === 0),
+    symmetric: terms.every(t => terms.some(s => s.a === t.b && s.b === t.a && s.e === t.e && s.re === t.re && s.im === t.im)),
     relativeError: 1e-15,
     shape: { kind: 'polynomial', terms },
   };
@@ -67,6 +68,7 @@ export function generalElement(kernel: Expr, { dimension, wave }: ModelSpec): El
       }
     },
     real: isReal(evaluate, dimension === 1),
+    symmetric: false,
     relativeError: 1e-14,
     shape: { kind: 'general', expr },
   };

@@ -4,6 +4,8 @@ import type { KernelShape } from './kernel-shape';
 export interface Element {
   add(p: Float64Array, k: Float64Array, E: number, re: Float64Array, im: Float64Array): void;
   readonly real: boolean;
+  /** V(p, k) = V(k, p), as it stands in its formula. */
+  readonly symmetric: boolean;
   readonly relativeError: number;
   readonly shape: KernelShape;
 }

@@ -17,8 +17,27 @@ export interface KernelOnGrid {
 
 /** `scale`: the momentum over which the kernel changes when both momenta are large; Infinity: it is smooth on every panel. */
 export function kernelOnGrid(element: MatrixElement, grid: MomentumGrid, scale: number, E: number): KernelOnGrid {
-  const rows = kernelRows(element, grid, grid.nodes, scale, E);
-  return { size: grid.nodes.length, re: rows.re, im: element.real ? null : rows.im };
+  const size = grid.nodes.length;
+  const { re, im } = element.symmetric ? symmetricRows(element, grid.nodes, E) : plainRows(element, grid, grid.nodes, E);
+  correctRows(element, grid, grid.nodes, scale, E, re, im);
+  return { size, re, im: element.real ? null : im };
+}
+
+/** V(k_i, k_j) from the half j >= i. */
+function symmetricRows(element: MatrixElement, nodes: Float64Array, E: number): { re: Float64Array; im: Float64Array } {
+  const n = nodes.length;
+  const re = new Float64Array(n * n);
+  const im = new Float64Array(n * n);
+  const left = new Float64Array(n);
+  for (let i = 0; i < n; i++) {
+    const [from, to] = [i * n + i, (i + 1) * n];
+    element.fill(left.fill(nodes[i]).subarray(i), nodes.subarray(i), E, re.subarray(from, to), im.subarray(from, to));
+    for (let j = i + 1; j < n; j++) {
+      re[j * n + i] = re[i * n + j];
+      im[j * n + i] = im[i * n + j];
+    }
+  }
+  return { re, im };
 }
 
 /** The rows of `KernelOnGrid` for any momenta p: re[row * nodes + column]. */
@@ -29,16 +48,34 @@ export function kernelRows(
   scale: number,
   E: number,
 ): { re: Float64Array; im: Float64Array } {
-  const n = grid.nodes.length;
+  const rows = plainRows(element, grid, p, E);
+  correctRows(element, grid, p, scale, E, rows.re, rows.im);
+  return rows;
+}
+
+function plainRows(element: MatrixElement, { nodes }: MomentumGrid, p: Float64Array, E: number): { re: Float64Array; im: Float64Array } {
+  const n = nodes.length;
   const re = new Float64Array(p.length * n);
   const im = new Float64Array(p.length * n);
   const left = new Float64Array(n);
-  for (let i = 0; i < p.length; i++) {
-    left.fill(p[i]);
-    element.fill(left, grid.nodes, E, re.subarray(i * n, (i + 1) * n), im.subarray(i * n, (i + 1) * n));
-    if (scale < Infinity) correctRow(element, grid, p[i], scale, E, re.subarray(i * n, (i + 1) * n), im.subarray(i * n, (i + 1) * n));
-  }
+  for (let i = 0; i < p.length; i++)
+    element.fill(left.fill(p[i]), nodes, E, re.subarray(i * n, (i + 1) * n), im.subarray(i * n, (i + 1) * n));
   return { re, im };
+}
+
+function correctRows(
+  element: MatrixElement,
+  grid: MomentumGrid,
+  p: Float64Array,
+  scale: number,
+  E: number,
+  re: Float64Array,
+  im: Float64Array,
+): void {
+  if (scale === Infinity) return;
+  const n = grid.nodes.length;
+  for (let i = 0; i < p.length; i++)
+    correctRow(element, grid, p[i], scale, E, re.subarray(i * n, (i + 1) * n), im.subarray(i * n, (i + 1) * n));
 }
 
 /** V(k_j, k) at the nodes for one k: a column, without any correction. */

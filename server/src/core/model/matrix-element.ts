@@ -16,6 +16,8 @@ export interface MatrixElement {
   fill(p: Float64Array, k: Float64Array, E: number, re: Float64Array, im: Float64Array): void;
   /** im is always 0. */
   readonly real: boolean;
+  /** V(p, k) = V(k, p); false: not known to be. */
+  readonly symmetric: boolean;
   /** Absolute error bound of the fill, relative to the kernel's size. */
   readonly relativeError: number;
   readonly shape: KernelShape;
@@ -38,6 +40,7 @@ export function matrixElement(interaction: InteractionSpec, spec: ModelSpec, cou
       for (const element of elements) element.add(p, k, E, re, im);
     },
     real: elements.every(e => e.real),
+    symmetric: elements.every(e => e.symmetric),
     relativeError: Math.max(1e-15, ...elements.map(e => e.relativeError)),
     shape: shapes.length === 1 ? shapes[0] : shapes.length === 0 ? { kind: 'polynomial', terms: [] } : { kind: 'sum', parts: shapes },
   };

@@ -10,6 +10,7 @@ export function formVertex(form: LocalForm): Vertex {
     ridge: Infinity,
     dependsOnEnergy: form.terms.some(t => t.e > 0),
     element: {
+      symmetric: false,
       real: form.terms.every(t => t.im === 0),
       relativeError: 1e-15,
       shape: { kind: 'polynomial', terms: form.terms },

@@ -72,6 +72,8 @@ export class GridChain {
   private readonly contacts: Placed<Contact>[] = [];
   private readonly dense: Placed<ScaledVertex>[] = [];
   private readonly basis: readonly ContactState[];
+  /** The contact states without a phase. */
+  private readonly central: readonly number[];
   private readonly places: ReadonlyMap<string, number>;
   /** Moments ∫ (state b)* G (state a) of each problem: [a * basis + b]. */
   private readonly loops: readonly Numbers[];
@@ -91,6 +93,7 @@ export class GridChain {
     this.basis = [...new Map([...contactStates(vertices), ...more].map(state => [stateKey(state), state])).values()].sort(
       (x, y) => x.phase - y.phase || x.power - y.power,
     );
+    this.central = this.basis.flatMap(({ phase }, j) => (phase === 0 ? [j] : []));
     this.places = new Map(this.basis.map((state, at) => [stateKey(state), at]));
     this.states = problems.map(p => this.basis.map(state => stateAt(state, p.points)));
     this.loops = problems.map((_, at) => this.momentsBetween(at));
@@ -177,11 +180,6 @@ export class GridChain {
     for (let a = 0; a < size; a++) if (this.basis[a].phase !== 0) add(this.states[at][a], this.shares[n][at].u, a);
     this.forEachDressing(n, at, (share, behind) => share.dressed!.forEach((f, a) => add(f, behind.u, a)));
     return sum;
-  }
-
-  /** The contact states without a phase. */
-  private get central(): readonly number[] {
-    return this.basis.flatMap(({ phase }, j) => (phase === 0 ? [j] : []));
   }
 
   private place(content: Monomial, vertex: Vertex, strength: Complex): void {
