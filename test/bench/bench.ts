@@ -105,19 +105,14 @@ async function wholeCheck(): Promise<void> {
   print('whole check, cold from the shell', cold, `${(cold / node).toFixed(1)} times an empty node process`);
 }
 
-function againstNumpy(): void {
+async function againstNumpy(): Promise<void> {
   const { stdout, status, stderr } = spawnSync('/usr/bin/python3', [join(root, 'test/bench/reference.py')], { encoding: 'utf8' });
   if (status !== 0) {
     console.log(`SKIPPED: NumPy is not installed for /usr/bin/python3 (${stderr.trim().split('\n').pop() ?? ''})`);
     return;
   }
   const reference = JSON.parse(stdout) as { seconds: number };
-  const ours = Array.from({ length: 5 }, () => {
-    const start = performance.now();
-    referenceWork();
-    return performance.now() - start;
-  });
-  const time = median(ours.slice(1));
+  const time = await times(16, referenceWork);
   print(
     'series and LU on 64 points',
     time,
@@ -131,5 +126,5 @@ const print = (what: string, milliseconds: number, note: string): void =>
 void (async () => {
   await keystroke();
   await wholeCheck();
-  againstNumpy();
+  await againstNumpy();
 })();
