@@ -71,17 +71,28 @@ function factorPanel(
   }
 }
 
+/** Two rows at a time, so that each entry of the block serves both. */
 function updateBelow(n: number, a: Float64Array, start: number, end: number): void {
   const top = start * n;
-  for (let r = end; r < n; r++) {
+  let r = end;
+  for (; r + 1 < n; r += 2) {
     const at = r * n + start;
-    const f0 = a[at];
-    const f1 = a[at + 1];
-    const f2 = a[at + 2];
-    const f3 = a[at + 3];
-    for (let j = end, to = r * n + end, u = top + end; j < n; j++, to++, u++) {
-      a[to] -= f0 * a[u] + f1 * a[u + n] + f2 * a[u + 2 * n] + f3 * a[u + 3 * n];
+    const [f0, f1, f2, f3] = [a[at], a[at + 1], a[at + 2], a[at + 3]];
+    const [g0, g1, g2, g3] = [a[at + n], a[at + n + 1], a[at + n + 2], a[at + n + 3]];
+    for (let to = r * n + end, u = top + end, last = r * n + n; to < last; to++, u++) {
+      const u0 = a[u];
+      const u1 = a[u + n];
+      const u2 = a[u + 2 * n];
+      const u3 = a[u + 3 * n];
+      a[to] -= f0 * u0 + f1 * u1 + f2 * u2 + f3 * u3;
+      a[to + n] -= g0 * u0 + g1 * u1 + g2 * u2 + g3 * u3;
     }
+  }
+  if (r < n) {
+    const at = r * n + start;
+    const [f0, f1, f2, f3] = [a[at], a[at + 1], a[at + 2], a[at + 3]];
+    for (let to = r * n + end, u = top + end, last = r * n + n; to < last; to++, u++)
+      a[to] -= f0 * a[u] + f1 * a[u + n] + f2 * a[u + 2 * n] + f3 * a[u + 3 * n];
   }
 }
 

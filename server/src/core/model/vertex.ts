@@ -41,10 +41,10 @@ export function contactTerms(shape: KernelShape): readonly MomentumTerm[] | null
 
 function rankTerms(shape: KernelShape, signed: boolean): readonly RankTerm[] | null {
   if (shape.kind === 'polynomial') return shape.terms.map(t => ({ ...t, phase: 0 }));
-  if (shape.kind === 'local') return signed && shape.contact ? shape.tail!.flatMap(expandTransfer) : null;
+  if (shape.kind === 'local') return signed && shape.contact && shape.tail ? shape.tail.flatMap(expandTransfer) : null;
   if (shape.kind !== 'sum') return null;
   const parts = shape.parts.map(part => rankTerms(part, signed));
-  return parts.every(part => part !== null) ? parts.flatMap(part => part!) : null;
+  return parts.every(part => part !== null) ? parts.flatMap(part => part) : null;
 }
 
 /** c (p - k)^n e^(iθ(p - k)), from how it looks for p - k > 0. */
