@@ -1,6 +1,6 @@
 import type { Complex } from '../algebra/expression';
 import { kernelColumn } from '../model/kernel-on-grid';
-import type { GridKernels } from '../series/dense-words';
+import type { Column, GridKernels } from '../series/dense-words';
 import type { ScaledVertex } from '../series/grid-chain';
 import type { LoopWeights } from '../series/loop-weights';
 
@@ -23,42 +23,34 @@ export function potentialMatrix(kernels: GridKernels, parts: readonly ScaledVert
   const loop = problem.points.subarray(0, size);
   for (const { vertex, strength } of parts) {
     const inner = kernels.of(vertex, problem.E.re);
-    for (let row = 0; row < nodes; row++) {
-      accumulate(
-        inner.re.subarray(row * nodes, (row + 1) * nodes),
-        inner.im?.subarray(row * nodes, (row + 1) * nodes) ?? null,
-        strength,
-        re,
-        im,
-        row * size,
-        1,
-      );
-    }
+    for (let row = 0; row < nodes; row++) accumulate(inner, row * nodes, nodes, strength, re, im, row * size, 1);
     for (let s = 0; s < onShell.length; s++) {
-      const row = kernels.row(vertex, onShell[s], problem.E.re);
-      accumulate(row.re, row.im, strength, re, im, (nodes + s) * size, 1);
+      accumulate(kernels.row(vertex, onShell[s], problem.E.re), 0, nodes, strength, re, im, (nodes + s) * size, 1);
       const column = kernelColumn(vertex.element, loop, onShell[s], problem.E.re);
-      accumulate(column.re, vertex.element.real ? null : column.im, strength, re, im, nodes + s, size);
+      accumulate({ re: column.re, im: vertex.element.real ? null : column.im }, 0, size, strength, re, im, nodes + s, size);
     }
   }
   return { size, re, im };
 }
 
+/** Adds s times x[from … from + count] to every `stride`-th place from `to` on. */
 function accumulate(
-  x: Float64Array,
-  y: Float64Array | null,
+  x: Column,
+  from: number,
+  count: number,
   s: Complex,
   re: Float64Array,
   im: Float64Array | null,
-  start: number,
+  to: number,
   stride: number,
 ): void {
+  const y = x.im;
   if (!y && s.im === 0) {
-    for (let j = 0, at = start; j < x.length; j++, at += stride) re[at] += s.re * x[j];
+    for (let j = 0, at = to; j < count; j++, at += stride) re[at] += s.re * x.re[from + j];
     return;
   }
-  for (let j = 0, at = start; j < x.length; j++, at += stride) {
-    re[at] += s.re * x[j] - (y ? s.im * y[j] : 0);
-    if (im) im[at] += s.im * x[j] + (y ? s.re * y[j] : 0);
+  for (let j = 0, at = to; j < count; j++, at += stride) {
+    re[at] += s.re * x.re[from + j] - (y ? s.im * y[from + j] : 0);
+    if (im) im[at] += s.im * x.re[from + j] + (y ? s.re * y[from + j] : 0);
   }
 }
