@@ -83,18 +83,21 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   options.progress?.(0.8, 'convergence of the series');
   const infrared = infraredVerdicts(setup);
   const results: TermResult[] = setup.list.terms.map((_, n) => {
-    const values = evaluation ? valuesOf(setup, evaluation, n).slice(0, asked.reported) : [];
+    const found = evaluation ? valuesOf(setup, evaluation, n).slice(0, asked.reported) : [];
+    // Loops that the cutoff does not make finite have no value at any cutoff.
+    const values = symbolic.terms[n].tooSoft ? found.map(({ p, E }) => ({ p, E, bare: null, renormalised: null, uncertainty: null })) : found;
     const one = termResult(setup, n, terms[n], status[n], values, infrared.verdicts[n]);
-    const scan = evaluation && scanOf(evaluation, n);
+    const scan = evaluation && !symbolic.terms[n].tooSoft && scanOf(evaluation, n);
     return scan ? { ...one, scan } : one;
   });
-  const solution = solve(setup, evaluation, points.slice(0, asked.reported), options, stop);
+  const infinite = symbolic.terms.some(t => t.tooSoft);
+  const solution = solve(setup, infinite ? null : evaluation, infinite ? [] : points.slice(0, asked.reported), options, stop);
   const expectations = judge(spec.expectations, {
     terms: results,
     convergenceAt: point => solution.convergence(asked.find(point)),
     driftAt: point => {
       const at = points.indexOf(asked.find(point)!);
-      return evaluation && at >= 0 ? driftOf(setup, evaluation, at) : null;
+      return evaluation && !infinite && at >= 0 ? driftOf(setup, evaluation, at) : null;
     },
     fullAt: point => solution.full(asked.find(point)),
     observables: solution.observables,
@@ -103,9 +106,9 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   });
   return {
     terms: results,
-    sum: evaluation ? sums(setup, evaluation, points.slice(0, asked.reported), solution.wanted ? solution.full : null) : [],
-    series: points.slice(0, asked.reported).map(p => solution.convergence(p)!),
-    counterterms: evaluation ? countertermResults(setup, evaluation) : [],
+    sum: evaluation && !infinite ? sums(setup, evaluation, points.slice(0, asked.reported), solution.wanted ? solution.full : null) : [],
+    series: infinite ? [] : points.slice(0, asked.reported).map(p => solution.convergence(p)!),
+    counterterms: evaluation && !infinite ? countertermResults(setup, evaluation) : [],
     couplings: couplingResults(setup, evaluation),
     observables: solution.observables,
     expectations,

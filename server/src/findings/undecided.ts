@@ -1,4 +1,4 @@
-import type { TermResult } from '../core/results';
+import type { Remark, TermResult } from '../core/results';
 import { placeOfMonomial } from './places';
 import { fromRemarks, severityWhereOpen } from './remarks';
 import { onResults, type Draft, type Evaluated, type FindingRule } from './rule';
@@ -16,7 +16,7 @@ export const undecided: FindingRule = {
 
 function openTerms(model: Evaluated): Draft[] {
   return model.results.terms
-    .filter(({ status, monomial }) => status === null && !spokenOf(model, monomial))
+    .filter(({ status, infrared, monomial }) => status === null && infrared.verdict !== 'diverges' && !spokenOf(model, monomial))
     .map(term => ({
       severity: 'error',
       message: sentence(model, term),
@@ -41,8 +41,8 @@ function openExpectations(model: Evaluated): Draft[] {
   });
 }
 
+const reasons: readonly Remark['code'][] = ['undecided', 'budget', 'cutoff-too-soft'];
+
 /** Whether the core has said why; a remark about nothing in particular explains everything that is open. */
 const spokenOf = ({ results }: Evaluated, subject: string): boolean =>
-  results.remarks.some(
-    remark => (remark.subject === subject || remark.subject === null) && (remark.code === 'undecided' || remark.code === 'budget'),
-  );
+  results.remarks.some(remark => (remark.subject === subject || remark.subject === null) && reasons.includes(remark.code));

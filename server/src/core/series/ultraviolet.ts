@@ -8,6 +8,7 @@ import { growsAs } from './growth-fit';
 import type { ScaledVertex } from './grid-chain';
 import type { StrengthLaw } from './contact-declared';
 import { fittedStrengths, minimalCounterterms } from './declared-strengths';
+import { infraredVerdicts } from './infrared';
 import { buildLadder, type Ladder, type LadderWishes } from './ladder';
 import { partialWave, type Setup } from './setup';
 import type { SymbolicVerdicts } from './verdicts';
@@ -29,6 +30,7 @@ export function symbolicUltraviolet(setup: Setup, symbolic: SymbolicVerdicts): U
 /** Verdicts, forms with coefficients, and the numerical confirmation. */
 export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, shouldStop: () => boolean): UltravioletResults {
   const remarks: Remark[] = [];
+  const infinite = infraredVerdicts(setup).verdicts.map(v => v === 'diverges');
   const exact = symbolic.contacts ? contactOverall(symbolic.contacts) : [];
   const dense = symbolic.terms.map(t => !t.contact && t.verdict !== 'undecided' && !t.tooSoft);
   const fitted: (FittedOverall | null)[] = symbolic.terms.map(() => null);
@@ -47,7 +49,7 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   const terms = symbolic.terms.map((t, n) => {
     const unknown = local[n] ? setup.list.splits(n).find(({ inner }) => !local[inner])?.inner : n;
     const agrees = (confirmed[n] ?? false) && unknown === undefined;
-    if (t.verdict !== 'undecided' && !t.tooSoft && !agrees)
+    if (t.verdict !== 'undecided' && !t.tooSoft && !infinite[n] && !agrees)
       remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, unknown) });
     return assemble(setup, symbolic, n, leftOver, forms[n], agrees);
   });
@@ -92,7 +94,7 @@ function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly 
   const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
   if (degree < 0) {
     const some = dense.some(Boolean);
-    return { rungs: some ? 9 : 6, energies: 1, momenta: 1, pointsPerPanel: some ? 12 : 16, powers: [], steepest };
+    return { rungs: some ? 9 : 6, energies: 1, momenta: 2, pointsPerPanel: some ? 12 : 16, powers: [], steepest };
   }
   const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a)
     .filter(a => setup.kinematics.signed || a % 2 === 0)
