@@ -23,6 +23,8 @@ export interface StrengthLaw {
   /** Index of the monomial it cancels. */
   readonly term: number;
   readonly law: readonly LaurentTerm[];
+  /** Error of each of its terms, where they have been fitted. */
+  readonly errors: readonly { readonly power: number; readonly log: number; readonly size: number }[];
 }
 
 /**
@@ -63,7 +65,7 @@ export function declaredScheme(setting: ContactSetting, counterterms: readonly C
       solveMinimal(setting, minimal, scale, remainder, away, points)?.forEach((strength, j) => {
         if (minimal[j].spec.scheme.at !== scale) return;
         added.push({ counterterm: minimal[j], strength });
-        strengths.push({ counterterm: minimal[j], term: n, law: ring.terms(strength) });
+        strengths.push({ counterterm: minimal[j], term: n, law: ring.terms(strength), errors: [] });
       });
     }
     if (!added.length) return null;

@@ -17,13 +17,19 @@ export function minimalCounterterms(setup: Setup, n: number): Counterterm[] {
  */
 export function fittedStrengths(setup: Setup, n: number, fitted: FittedOverall, scale: number): StrengthLaw[] {
   const counterterms = minimalCounterterms(setup, n).filter(c => c.spec.scheme.at === scale);
-  const laws = counterterms.map(counterterm => ({ counterterm, term: n, law: [] as LaurentTerm[] }));
+  const laws = counterterms.map(counterterm => ({
+    counterterm,
+    term: n,
+    law: [] as LaurentTerm[],
+    errors: [] as StrengthLaw['errors'][number][],
+  }));
   for (const form of fitted.forms) {
     const share = sharesOf(form, counterterms);
     if (!share) continue;
     share.forEach((z, j) => {
       if (z === 0) return;
       const growing = [{ power: form.power, log: form.log, re: -z * form.coefficient.re, im: -z * form.coefficient.im }];
+      laws[j].errors.push({ power: form.power, log: form.log, size: Math.abs(z) * form.uncertainty });
       laws[j].law.push(...shiftLogs(growing, -Math.log(scale)));
     });
   }

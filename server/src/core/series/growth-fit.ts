@@ -10,7 +10,7 @@ export interface NumericalGrowth {
 }
 
 /** Relative error of a grid amplitude: what differences may be taken for nothing, and what a fit has to reckon with in each number. */
-const NOISE = 1e-11;
+export const NOISE = 1e-11;
 const ROUNDING = 3e-14;
 
 /**
@@ -43,6 +43,15 @@ export function growthFromNumbers(cutoffs: readonly number[], y: readonly Comple
     scaled = next;
   }
   return { verdict: 'unclear', power: 0, log: 0 };
+}
+
+/** Do numbers with these errors come to rest as the cutoff is lifted? What shows above the errors must fall and stay away. */
+export function settles(cutoffs: readonly number[], y: readonly Complex[], errors: readonly number[]): boolean {
+  const differences = y.slice(1).map((v, j) => modulus(subtract(v, y[j])));
+  const shows = differences.map((d, j) => d > errors[j] + errors[j + 1]);
+  const end = shows.lastIndexOf(true) + 1;
+  const sinks = end < shows.length && shows.slice(0, end).every((s, j) => s && (j === 0 || differences[j] < differences[j - 1]));
+  return sinks || growthFromNumbers(cutoffs, y).verdict === 'converges';
 }
 
 /** An oscillating sequence: does the largest difference fall as a power from each third of the ladder to the next? */

@@ -1,9 +1,10 @@
 import type { Remark, TermResult, Ultraviolet } from '../results';
-import { CutoffGrid, seriesAtCutoff } from './amplitudes';
+import { CutoffGrid, seriesAtCutoff, type OnShellAmplitude, type OnShellPoint } from './amplitudes';
 import { declaredScheme, type DeclaredScheme, type StrengthLaw } from './contact-declared';
-import { growsAs } from './growth-fit';
+import { NOISE, settles } from './growth-fit';
 import { isProperPart } from './monomials';
 import { kernelScales, type Setup } from './setup';
+import { vertexValue } from './subtraction';
 import type { SymbolicVerdicts } from './verdicts';
 
 type Status = TermResult['status'];
@@ -74,18 +75,32 @@ export function renormalisedConverges(setup: Setup, strengths: readonly Strength
   if (runs.some(r => r === null)) return setup.list.terms.map(() => false);
   return setup.list.terms.map((_, n) => {
     const at = runs.map(r => r!.renormalised[0][n]);
+    const errors = runs.map((r, j) => NOISE * Math.hypot(...sizes(r!.bare[0][n])) + lawError(strengths, n, point, cutoffs[j]));
+    const { backward } = at[0];
     return (
-      growsAs(
+      settles(
         cutoffs,
         at.map(a => a.forward),
-        null,
+        errors,
       ) &&
-      (at[0].backward === null ||
-        growsAs(
+      (backward === null ||
+        settles(
           cutoffs,
           at.map(a => a.backward!),
-          null,
+          errors,
         ))
     );
   });
+}
+
+const sizes = ({ forward, backward }: OnShellAmplitude): number[] => [forward.re, forward.im, backward?.re ?? 0, backward?.im ?? 0];
+
+/** What the errors of fitted strengths make of the amplitude of monomial n. */
+function lawError(strengths: readonly StrengthLaw[], n: number, { p, E }: OnShellPoint, cutoff: number): number {
+  const own = strengths.filter(law => law.term === n);
+  return own.reduce((sum, { counterterm, errors }) => {
+    const form = vertexValue(counterterm.vertex, p, p, E);
+    const strength = errors.reduce((s, e) => s + e.size * cutoff ** e.power * Math.abs(Math.log(cutoff)) ** e.log, 0);
+    return sum + Math.hypot(form.re, form.im) * strength;
+  }, 0);
 }
