@@ -34,6 +34,8 @@ export interface GridWishes {
   readonly kernelScale: number;
   /** Below a sharp edge panels narrow to this width, since what a local kernel makes of the edge varies over its scale. */
   readonly edgeWidth: number;
+  /** Momenta (≥ 0) at which kernels are singular or have a kink: panels end there and narrow towards them. */
+  readonly singular: readonly number[];
   readonly pointsPerPanel: number;
   /** Power of momentum with which integrands grow, for the reach of a smooth cutoff. */
   readonly growth: number;
@@ -41,7 +43,7 @@ export interface GridWishes {
 
 export function momentumGrid(kinematics: Kinematics, regulator: Regulator, cutoff: number, wishes: GridWishes): MomentumGrid {
   const high = cutoff * regulator.reach(wishes.growth);
-  const breaks = breakpoints(high, regulator.shape.kind === 'sharp', wishes);
+  const breaks = breakpoints(high, cutoff, regulator, wishes);
   const all = kinematics.signed
     ? [
         ...breaks
@@ -77,19 +79,37 @@ export function gridOn(
   return { cutoff, low: breaks[0], high: breaks[breaks.length - 1], nodes, weights, measure, energies: kinematics.energies(nodes), panels };
 }
 
-/** 0, s, 2s, 4s, … , high; halved further where external momenta or a sharp edge ask for it. */
-function breakpoints(high: number, sharp: boolean, { smallest, external, kernelScale, edgeWidth }: GridWishes): number[] {
+/** 0, s, 2s, 4s, … , high; divided further where external momenta, the cutoff's fall or a sharp edge ask for it. */
+function breakpoints(
+  high: number,
+  cutoff: number,
+  { shape, width }: Regulator,
+  { smallest, external, kernelScale, edgeWidth, singular }: GridWishes,
+): number[] {
   const doublings = Math.min(60, Math.max(2, Math.ceil(Math.log2(high / Math.min(smallest, kernelScale)))));
   const breaks = [0];
   for (let j = doublings; j >= 0; j--) breaks.push(high / 2 ** j);
   const refined = breaks.slice(0, 1);
   for (let j = 1; j < breaks.length; j++) {
     const [from, to] = [breaks[j - 1], breaks[j]];
-    const pieces = from < external && to - from > kernelScale ? 2 ** Math.min(13, Math.ceil(Math.log2((to - from) / kernelScale))) : 1;
+    const narrow = from < external && to - from > kernelScale ? 2 ** Math.min(13, Math.ceil(Math.log2((to - from) / kernelScale))) : 1;
+    const pieces = Math.max(narrow, to > cutoff / 4 ? Math.ceil((to - from) / (width * cutoff)) : 1);
     for (let i = 1; i <= pieces; i++) refined.push(from + ((to - from) * i) / pieces);
   }
-  if (sharp && Number.isFinite(edgeWidth)) {
+  if (shape.kind === 'sharp' && Number.isFinite(edgeWidth)) {
     for (let width = (high - refined[refined.length - 2]) / 2; width > edgeWidth / 2; width /= 2) refined.splice(-1, 0, high - width);
   }
-  return refined;
+  if (!singular.length) return refined;
+  const levels = Math.max(1, Math.min(10, Math.floor(GRADED / singular.length)));
+  const graded = singular.flatMap(p => gradedTo(p, levels)).filter(k => k < high);
+  return [...new Set([...refined, ...graded])].sort((x, y) => x - y);
+}
+
+/** About so many panels narrow towards singular momenta, on either side of them. */
+export const GRADED = 24;
+
+/** p and what lies 1/4, 1/16, … of it on either side. */
+function gradedTo(p: number, levels: number): number[] {
+  const steps = Array.from({ length: levels }, (_, j) => p / 4 ** (j + 1));
+  return [...steps.map(s => p - s), p, ...steps.map(s => p + s)].filter(k => k > 0);
 }

@@ -9,6 +9,8 @@ export interface Regulator {
   leg(t: number): number;
   /** Where f² has fallen below rounding, in units of L, for an integrand that grows as t^growth without it. */
   reach(growth: number): number;
+  /** Above a quarter of the cutoff f² changes over this momentum, in units of L. */
+  readonly width: number;
   /** f² = Σ c_j t^(step*j) for small t; sharp: 1. */
   taylor(j: number): number;
   readonly step: number;
@@ -25,6 +27,7 @@ export function regulatorOf(shape: CutoffShape): Regulator {
         shape,
         leg: () => 1,
         reach: () => 1,
+        width: Infinity,
         taylor: j => (j === 0 ? 1 : 0),
         step: Infinity,
         mellin: s => (s === 0 ? 0 : 1 / s),
@@ -35,6 +38,7 @@ export function regulatorOf(shape: CutoffShape): Regulator {
       return {
         shape,
         leg: t => Math.exp(-(Math.abs(t) ** n2)),
+        width: 1.2 / shape.n,
         reach: growth => (20 + 2 * Math.max(0, growth)) ** (1 / n2),
         taylor: j => (-2) ** j / gamma(j + 1),
         step: n2,
@@ -47,6 +51,7 @@ export function regulatorOf(shape: CutoffShape): Regulator {
       return {
         shape,
         leg: t => (1 + t * t) ** -n,
+        width: Infinity,
         reach: growth => Math.min(1e12, 10 ** (16 / Math.max(1, 4 * n - growth))),
         taylor: j => binomial(-2 * n, j),
         step: 2,

@@ -6,7 +6,7 @@ import { GridKernels } from './dense-words';
 import { contactStates, GridChain, type ScaledVertex } from './grid-chain';
 import type { StrengthLaw } from './contact-declared';
 import { loopWeights, type LoopWeights } from './loop-weights';
-import { kernelScales, oscillationLength, type Setup } from './setup';
+import { isSingular, kernelScales, oscillationLength, type Setup } from './setup';
 import {
   blockAmplitude,
   conditionMatrix,
@@ -50,13 +50,14 @@ export function gridWishes(setup: Setup, cutoff: number, momenta: readonly numbe
   const scales = kernelScales(setup.vertices);
   const length = oscillationLength(setup.vertices);
   const external = Math.max(...momenta.map(Math.abs));
-  const narrowest = Math.min(Infinity, ...scales, ...(length > 0 ? [4 / length] : []));
+  const narrowest = Math.min(Infinity, ...scales, ...(length > 0 ? [5 / length] : []));
   return {
     // A pole at p leaves something smooth behind on a panel a few times as wide.
     smallest: Math.min(3 * Math.min(...momenta.map(Math.abs).filter(p => p > 0)), narrowest),
     external: length > 0 ? Infinity : external,
     kernelScale: narrowest,
     edgeWidth: Math.max(narrowest, cutoff / 8),
+    singular: setup.vertices.some(isSingular) ? [...new Set(momenta.map(Math.abs))] : [],
     pointsPerPanel,
     growth: 2 * (setup.size - 1) + setup.kinematics.dimension,
   };

@@ -1,10 +1,10 @@
-import { kernelScales, oscillationLength, type Setup } from './setup';
+import { GRADED } from '../model/momentum-grid';
+import { ladderCutoffs } from './ladder';
+import { isSingular, oscillationLength, type Setup } from './setup';
 
 /** Nodes of a grid: about so many panels of so many points. */
 const NODES = 250;
 const RUNGS = 13;
-/** From the lowest to the highest cutoff of the ladder, in units of the soft momentum. */
-const LADDER_TOP = 1600;
 
 /** About how many multiplications the numbers of a model take: an order of magnitude, but the same on every machine. */
 export function cost(setup: Setup): number {
@@ -24,11 +24,11 @@ export function cost(setup: Setup): number {
   return algebra + grids + words * columns * nodes * nodes + small;
 }
 
-/** An oscillating kernel needs panels as narrow as its oscillation all the way to the cutoff. */
+/** An oscillating kernel needs panels as narrow as its oscillation all the way to the cutoff, a singular one more where it is singular. */
 function nodesOf(setup: Setup): number {
   const length = oscillationLength(setup.vertices);
-  if (length === 0) return NODES;
-  const soft = Math.max(setup.momentum, ...kernelScales(setup.vertices), 2 / length);
+  const plain = NODES + (setup.vertices.some(isSingular) ? 24 * GRADED : 0);
+  if (length === 0) return plain;
   const { value, scan } = setup.spec.cutoff;
-  return NODES + 3 * length * Math.max(value, scan?.to ?? 0, LADDER_TOP * soft);
+  return plain + 2.4 * length * Math.max(value, scan?.to ?? 0, ...ladderCutoffs(setup, { rungs: RUNGS, steepest: 0 }));
 }

@@ -61,21 +61,35 @@ export interface LadderWishes {
   readonly steepest: number;
 }
 
-/** Start of the ladder in units of the largest soft momentum; a power law has to be visible through its corrections. */
-const START = 50;
+/**
+ * Start of the ladder in units of the largest soft momentum; a power law has to be visible through its corrections. Edges of a potential
+ * oscillate in momentum up to the highest cutoff, and the grid has to follow.
+ */
+const START = { smooth: 50, edged: 15 };
 /** Ratio of successive cutoffs: no simple number, so that no oscillation is met always at the same phase. */
 const RATIO = { gentle: 1.5422107, steep: 1.2713049 };
+
+/** The cutoffs of the ladder, lowest first. */
+export function ladderCutoffs(setup: Setup, { rungs, steepest }: Pick<LadderWishes, 'rungs' | 'steepest'>): number[] {
+  const length = oscillationLength(setup.vertices);
+  const edged = oscillationLength(setup.vertices.filter(v => !v.finiteRank)) > 0;
+  const start = START[edged ? 'edged' : 'smooth'] * Math.max(softMomentum(setup), length > 0 ? 2 / length : 0);
+  const ratio = RATIO[edged || steepest > 3 ? 'steep' : 'gentle'];
+  return Array.from({ length: rungs }, (_, j) => start * ratio ** j);
+}
+
+function softMomentum({ momentum, vertices }: Setup): number {
+  return Math.max(momentum, ...kernelScales(vertices).filter(s => s < 1e3 * momentum));
+}
 
 export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const { kinematics, regulator, list, vertices } = setup;
   const scales = kernelScales(vertices);
   const length = oscillationLength(vertices);
-  const soft = Math.max(setup.momentum, ...scales.filter(s => s < 1e3 * setup.momentum));
+  const soft = softMomentum(setup);
+  const cutoffs = ladderCutoffs(setup, wishes);
   const momenta = Array.from({ length: wishes.momenta }, (_, j) => soft * (0.61803 + 0.41421 * j));
   const externals = momenta.flatMap(k => externalsAt(kinematics, k));
-  const start = START * Math.max(soft, length > 0 ? 2 / length : 0);
-  const ratio = wishes.steepest > 3 ? RATIO.steep : RATIO.gentle;
-  const cutoffs = Array.from({ length: wishes.rungs }, (_, j) => start * ratio ** j);
   const energies = Array.from({ length: wishes.energies }, (_, j) => energyAway(kinematics, soft, 0.7310585786 + 0.6 * j));
   const rungs = cutoffs.map(cutoff => {
     const below = { external: 0, edgeWidth: Math.min(Infinity, ...scales) };

@@ -101,13 +101,19 @@ export function kernelScales(vertices: readonly Vertex[]): number[] {
     .filter(scale => scale > 0 && Number.isFinite(scale));
 }
 
-/** Largest length of an oscillation e^(i phase k) in a loop, where two kernels meet; 0 where there is none. */
+/**
+ * Largest length of an oscillation e^(i phase k) that a grid has to follow; 0 where there is none. Where two deltas meet in a loop both count;
+ * other kernels fall off besides.
+ */
 export function oscillationLength(vertices: readonly Vertex[]): number {
-  const phases = vertices
+  const lengths = vertices
     .flatMap(v => localParts(v.element.shape))
-    .flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])]);
-  return 2 * Math.max(0, ...phases.map(t => Math.abs(t.phase)));
+    .flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])].map(t => Math.abs(t.phase) * (shape.contact ? 2 : 1)));
+  return Math.max(0, ...lengths);
 }
+
+/** Singular, or with a kink, where the momentum transfer vanishes. */
+export const isSingular = (vertex: Vertex): boolean => !vertex.finiteRank && vertex.ridge === 0;
 
 /** l, |m|, or 1 for the odd wave: amplitudes start with p^l k^l. */
 export function partialWave(wave: ModelSpec['wave']): number {
