@@ -5,7 +5,7 @@ import { energyAway } from './contact-divergences';
 import { GridKernels } from './dense-words';
 import { contactStates, GridChain, type ScaledVertex } from './grid-chain';
 import { loopWeights } from './loop-weights';
-import { kernelScales, oscillationLength, type Setup } from './setup';
+import { kernelScales, oscillationLength, softMomentum, type Setup } from './setup';
 import { externalsAt } from './subtraction';
 
 /** A ladder of cutoffs, with the grids and kernels at each rung. */
@@ -76,10 +76,6 @@ export function ladderCutoffs(setup: Setup, { rungs, steepest }: Pick<LadderWish
   const start = START[edged ? 'edged' : 'smooth'] * Math.max(softMomentum(setup), length > 0 ? 2 / length : 0);
   const ratio = RATIO[edged || steepest > 3 ? 'steep' : 'gentle'];
   return Array.from({ length: rungs }, (_, j) => start * ratio ** j);
-}
-
-function softMomentum({ momentum, vertices }: Setup): number {
-  return Math.max(momentum, ...kernelScales(vertices).filter(s => s < 1e3 * momentum));
 }
 
 export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {

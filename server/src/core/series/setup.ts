@@ -101,6 +101,11 @@ export function kernelScales(vertices: readonly Vertex[]): number[] {
     .filter(scale => scale > 0 && Number.isFinite(scale));
 }
 
+/** The largest momentum that has to be small beside a cutoff on a ladder. */
+export function softMomentum({ momentum, vertices }: Setup): number {
+  return Math.max(momentum, ...kernelScales(vertices).filter(s => s < 1e3 * momentum));
+}
+
 /**
  * Largest length of an oscillation e^(i phase k) that a grid has to follow; 0 where there is none. Where two deltas meet in a loop both count;
  * other kernels fall off besides.

@@ -3,7 +3,7 @@ import { CutoffGrid, seriesAtCutoff, type OnShellAmplitude, type OnShellPoint } 
 import { declaredScheme, type DeclaredScheme, type StrengthLaw } from './contact-declared';
 import { NOISE, settles } from './growth-fit';
 import { isProperPart } from './monomials';
-import { kernelScales, type Setup } from './setup';
+import { softMomentum, type Setup } from './setup';
 import { vertexValue } from './subtraction';
 import type { SymbolicVerdicts } from './verdicts';
 
@@ -62,15 +62,15 @@ export function cancelledBy(setup: Setup, n: number): string[] {
     .map(c => c.spec.name);
 }
 
-const CUTOFFS = Array.from({ length: 8 }, (_, j) => 1.5422107 ** j);
+/** A short ladder, low enough for what is left to stand out from the rounding of what has been taken away. */
+const CUTOFFS = Array.from({ length: 8 }, (_, j) => 25 * 1.2713049 ** j);
 
 /** For each monomial: does its renormalised on-shell amplitude converge as the cutoff is lifted, as far as numbers tell? */
 export function renormalisedConverges(setup: Setup, strengths: readonly StrengthLaw[], shouldStop: () => boolean): boolean[] {
   const p = setup.momentum * 0.8660254;
   const point = { p, E: setup.kinematics.energy(p) };
-  const start =
-    50 * Math.max(p, ...kernelScales(setup.vertices).filter(s => s < 1e3 * p), ...setup.counterterms.map(c => c.spec.scheme.at));
-  const cutoffs = CUTOFFS.map(x => x * start);
+  const soft = Math.max(softMomentum(setup), ...setup.counterterms.map(c => c.spec.scheme.at));
+  const cutoffs = CUTOFFS.map(x => x * soft);
   const runs = cutoffs.map(L => (shouldStop() ? null : seriesAtCutoff(new CutoffGrid(setup, L, [p], 16), [point], strengths)));
   if (runs.some(r => r === null)) return setup.list.terms.map(() => false);
   return setup.list.terms.map((_, n) => {
