@@ -32,13 +32,21 @@ interface PartSample {
 /**
  * What grows in R_n (nested divergences already subtracted on the run) as forms with coefficients, logarithms as ln(L/scale). The growth is
  * fitted in each part of the amplitude; contacts at its ends give their powers of p and k as they stand, other kernels a polynomial of the
- * degree that power counting leaves, or the kernel itself.
+ * degree that power counting leaves, or the kernel itself. `bare`: the size of the bare amplitude at each cutoff, which rounding goes by.
  */
-export function fitOverall(setup: Setup, run: FittingRun, n: number, degree: number, scale: number, logs: number): FittedOverall {
+export function fitOverall(
+  setup: Setup,
+  run: FittingRun,
+  n: number,
+  degree: number,
+  scale: number,
+  logs: number,
+  bare: readonly number[],
+): FittedOverall {
   const { growing, falling } = candidates(setup, degree, logs, run.cutoffs.length);
   const fit = growthFit(run.cutoffs, growing, falling, scale);
   if (!fit) return { forms: [], local: false };
-  const byGrowth = sampleGrowth(run, n, growing, fit);
+  const byGrowth = sampleGrowth(run, n, growing, fit, bare);
   const last = run.cutoffs[run.cutoffs.length - 1];
   const reach = growing.map((g, j) => largestOf(run, byGrowth[j]) * last ** g.power * Math.log(last) ** g.log);
   const strongest = Math.max(...reach);
@@ -78,17 +86,22 @@ function sampleGrowth(
   n: number,
   growing: readonly Growth[],
   fit: NonNullable<ReturnType<typeof growthFit>>,
+  bare: readonly number[],
 ): PartSample[][] {
   const parts = run.energies.map((_, e) => run.parts(n, e));
   const sameEnds = (x: AmplitudePart, y: AmplitudePart) => endKey(x.left) === endKey(y.left) && endKey(x.right) === endKey(y.right);
-  const fits = parts[0].map(part =>
-    run.energies.map((_, e) => {
+  const fits = parts[0].map(part => {
+    const sizes = bare.map(size => size / (endSize(run, part.left) * endSize(run, part.right)));
+    return run.energies.map((_, e) => {
       const values = parts[e].find(other => sameEnds(part, other))?.values ?? [];
-      const re = fit(run.cutoffs.map((__, j) => values[j]?.re ?? 0));
+      const re = fit(
+        run.cutoffs.map((__, j) => values[j]?.re ?? 0),
+        sizes,
+      );
       const im = fit(run.cutoffs.map((__, j) => values[j]?.im ?? 0));
       return { re, im };
-    }),
-  );
+    });
+  });
   return growing.map((_, j) =>
     parts[0].map((part, at) => ({
       left: part.left,

@@ -95,25 +95,27 @@ export interface Growth {
 
 /**
  * The least-squares fit of Σ c L^a ln^b(L/scale) to numbers at these cutoffs, as a function of the numbers: coefficients of the wanted
- * growths (terms that fall off are fitted beside them), and their errors: how far each moves when the lowest
- * cutoff is dropped, and no less than what rounding of the numbers makes of it. Null where the cutoffs
- * are too few or do not tell the terms apart.
+ * growths (terms that fall off are fitted beside them), and their errors: how far each moves when the lowest cutoff is dropped, and no less
+ * than what rounding of the numbers makes of it; `sizes`: what they were before anything was subtracted from them. Null where the cutoffs are
+ * too few or do not tell the terms apart.
  */
 export function growthFit(
   cutoffs: readonly number[],
   growing: readonly Growth[],
   falling: readonly Growth[],
   scale = 1,
-): ((y: readonly number[]) => { coefficients: number[]; shift: number[] }) | null {
+): ((y: readonly number[], sizes?: readonly number[]) => { coefficients: number[]; shift: number[] }) | null {
   const all = [...growing, ...falling];
   if (cutoffs.length < all.length + 2) return null;
   const whole = fitMatrix(cutoffs, all, scale);
   const shorter = fitMatrix(cutoffs.slice(1), all, scale);
   if (!whole || !shorter) return null;
-  return y => {
+  return (y, sizes = y) => {
     const coefficients = growing.map((_, j) => dot(whole[j], y));
     const others = growing.map((_, j) => dot(shorter[j], y.slice(1)));
-    const rounding = growing.map((_, j) => ROUNDING * Math.hypot(...whole[j].map((m, i) => m * y[i])));
+    const rounding = growing.map(
+      (_, j) => ROUNDING * Math.hypot(...whole[j].map((m, i) => m * Math.max(Math.abs(y[i]), Math.abs(sizes[i])))),
+    );
     return { coefficients, shift: coefficients.map((c, j) => Math.max(Math.abs(c - others[j]), rounding[j])) };
   };
 }

@@ -35,10 +35,10 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   const dense = symbolic.terms.map(t => !t.contact && t.verdict !== 'undecided' && !t.tooSoft);
   const fitted: (FittedOverall | null)[] = symbolic.terms.map(() => null);
   const ladder = buildLadder(setup, ladderWishes(setup, symbolic, dense));
-  const confirmed = confirm(symbolic, ladder, shouldStop);
+  const bare = confirm(symbolic, ladder, shouldStop);
   const fits = symbolic.terms.some((t, n) => dense[n] && t.overallDegree >= 0);
-  if (fits) fitDense(setup, symbolic, ladder, dense, exact, fitted, 1, shouldStop);
-  const strengths = fits ? denseStrengths(setup, symbolic, ladder, dense, fitted, shouldStop) : [];
+  if (fits) fitDense(setup, symbolic, ladder, bare, dense, exact, fitted, 1, shouldStop);
+  const strengths = fits ? denseStrengths(setup, symbolic, ladder, bare, dense, fitted, shouldStop) : [];
   const forms = symbolic.terms.map((_, n): OverallForm[] => {
     const list: readonly FittedForm[] =
       exact[n]?.forms.map(f => ({ ...f, uncertainty: 1e-10 * Math.hypot(f.coefficient.re, f.coefficient.im) })) ?? fitted[n]?.forms ?? [];
@@ -48,7 +48,7 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   const local = symbolic.terms.map((_, n) => exact[n]?.local ?? fitted[n]?.local ?? true);
   const terms = symbolic.terms.map((t, n) => {
     const unknown = local[n] ? setup.list.splits(n).find(({ inner }) => !local[inner])?.inner : n;
-    const agrees = (confirmed[n] ?? false) && unknown === undefined;
+    const agrees = bare[n].confirmed && unknown === undefined;
     if (t.verdict !== 'undecided' && !t.tooSoft && !infinite[n] && !agrees)
       remarks.push({ code: 'undecided', subject: setup.list.terms[n].name, message: disagreement(setup, n, t, unknown) });
     return assemble(setup, symbolic, n, leftOver, forms[n], agrees);
@@ -109,17 +109,25 @@ function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly 
   };
 }
 
+interface BareTerm {
+  readonly confirmed: boolean;
+  /** |R_n| at each rung. */
+  readonly sizes: readonly number[];
+}
+
 /** Walks the ladder with the bare series: contacts against their exact values, everything else by its growth. */
-function confirm({ contacts, terms }: SymbolicVerdicts, { cutoffs, bare }: Ladder, shouldStop: () => boolean): boolean[] {
+function confirm({ contacts, terms }: SymbolicVerdicts, { cutoffs, bare }: Ladder, shouldStop: () => boolean): BareTerm[] {
   const run = bare();
   const exact = contacts ? contactsOnLadder(contacts, run) : [];
   const last = run.externals.length - 1;
   return terms.map((t, n) => {
-    if (shouldStop()) return false;
+    if (shouldStop()) return { confirmed: false, sizes: [] };
     run.step(n);
-    if (t.contact) return contactAgrees(contacts!, exact[n]!, cutoffs, run, n);
-    if (t.verdict === 'oscillates') return true;
-    return growsAs(cutoffs, run.values(n, 0, last), t.verdict === 'diverges' ? { power: t.power!, log: t.log! } : null);
+    const values = run.values(n, 0, last);
+    const confirmed = t.contact
+      ? contactAgrees(contacts!, exact[n]!, cutoffs, run, n)
+      : t.verdict === 'oscillates' || growsAs(cutoffs, values, t.verdict === 'diverges' ? { power: t.power!, log: t.log! } : null);
+    return { confirmed, sizes: values.map(v => Math.hypot(v.re, v.im)) };
   });
 }
 
@@ -128,6 +136,7 @@ function fitDense(
   setup: Setup,
   symbolic: SymbolicVerdicts,
   ladder: Ladder,
+  bare: readonly BareTerm[],
   dense: readonly boolean[],
   exact: ReturnType<typeof contactOverall> | readonly [],
   fitted: (FittedOverall | null)[],
@@ -147,6 +156,7 @@ function fitDense(
         t.overallDegree,
         scale,
         Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)),
+        bare[n].sizes,
       );
     const forms: readonly Pick<FittedForm, 'form' | 'power' | 'log' | 'coefficient'>[] = exact[n]?.forms ?? fitted[n]?.forms ?? [];
     if (!forms.length) continue;
@@ -165,6 +175,7 @@ function denseStrengths(
   setup: Setup,
   symbolic: SymbolicVerdicts,
   ladder: Ladder,
+  bare: readonly BareTerm[],
   dense: readonly boolean[],
   atUnit: readonly (FittedOverall | null)[],
   shouldStop: () => boolean,
@@ -179,6 +190,7 @@ function denseStrengths(
         setup,
         symbolic,
         ladder,
+        bare,
         dense,
         symbolic.contacts ? contactOverall(symbolic.contacts, scale) : [],
         fitted,
