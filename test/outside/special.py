@@ -44,6 +44,8 @@ def scaled_i(l, z):
     return mp.sqrt(mp.pi / (2 * z)) * mp.besseli(l + mp.mpf(1) / 2, z) * mp.exp(-z)
 
 
+ENDS = [(1, 1), (1, 0.999), (2, 1.3), (3, 0.2), (50, 1e-3), (1, 1e-9)]
+
 values = {
     "erf": [[x, agree(mp.erf(x), sp.erf(x))] for x in [-5.5, -1, 1e-9, 0.1, 0.5, 1.5, 2.9, 3.1, 4.5, 7]],
     "gamma": [[x, agree(mp.gamma(x), sp.gamma(x))] for x in [-3.7, -0.5, 1e-5, 0.3, 0.5, 1.5, 2.2, 5, 17.5, 30, 100.25, 170.2]],
@@ -67,6 +69,14 @@ values = {
     "scaledModifiedSphericalBessel": [
         [l, z, agree(scaled_i(l, z), gsl_function("bessel_il_scaled", l, float(z)), 1e-9)] for l in [0, 1, 2, 4, 8] for z in [1e-3, 0.4, 3, 20, 29, 31, 200, 5000]
     ],
+    "scaledModifiedBessel": [
+        [n, z, agree(mp.besseli(n, z) * mp.exp(-z), gsl_function("bessel_In_scaled", n, float(z)), 1e-9)]
+        for n in [0, 1, 2, 5]
+        for z in [1e-3, 0.4, 3, 20, 29.9, 30.1, 56, 200, 5000]
+    ],
+    # K(k)/a and a E(k), k² = 1 - b²/a².
+    "ellipticFirst": [[a, b, agree(mp.ellipk(1 - mp.mpf(b) ** 2 / mp.mpf(a) ** 2) / a, sp.ellipkm1(b * b / a / a) / a)] for a, b in ENDS],
+    "ellipticSecond": [[a, b, agree(a * mp.ellipe(1 - mp.mpf(b) ** 2 / mp.mpf(a) ** 2), a * sp.ellipe(1 - b * b / a / a))] for a, b in ENDS],
 }
 gsl_version = ctypes.c_char_p.in_dll(gsl, "gsl_version").value.decode()
 write("special", "mpmath at 40 digits; compared with SciPy and GSL to 1e-9 or better", 16, {"values": values}, gsl=gsl_version)

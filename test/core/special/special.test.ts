@@ -1,10 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { besselJ } from '../../../server/src/core/special/bessel-j';
 import { digamma } from '../../../server/src/core/special/digamma';
+import { ellipticIntegrals } from '../../../server/src/core/special/elliptic';
 import { erf } from '../../../server/src/core/special/erf';
 import { gamma, logGamma } from '../../../server/src/core/special/gamma';
 import { legendreP } from '../../../server/src/core/special/legendre-p';
 import { legendreQ, legendreQAbove } from '../../../server/src/core/special/legendre-q';
+import { scaledModifiedBessel } from '../../../server/src/core/special/modified-bessel';
 import { scaledModifiedSphericalBessel } from '../../../server/src/core/special/modified-spherical-bessel';
 import { sphericalBessel, sphericalBessels } from '../../../server/src/core/special/spherical-bessel';
 import { specialFunctions } from '../../../server/src/core/special';
@@ -23,6 +25,9 @@ const amplitude = (fall: (x: number) => number) => (row: Row) => Math.max(value(
 describe('special functions against mpmath, SciPy and GSL', () => {
   it('erf', () => expect(worst(values.erf, erf, value)).toBeLessThan(1e-15));
   it('gamma', () => expect(worst(values.gamma, gamma, value)).toBeLessThan(5e-14));
+  it('I_n', () => expect(worst(values.scaledModifiedBessel, scaledModifiedBessel, value)).toBeLessThan(1e-14));
+  it('K', () => expect(worst(values.ellipticFirst, (a, b) => ellipticIntegrals(a, b).first, value)).toBeLessThan(1e-15));
+  it('E', () => expect(worst(values.ellipticSecond, (a, b) => ellipticIntegrals(a, b).second, value)).toBeLessThan(1e-14));
   it('digamma', () => expect(worst(values.digamma, digamma, row => Math.max(value(row), 0.1))).toBeLessThan(1e-14));
   // A phase of 1000 is rounded by 1e-13 before the cosine is taken.
   it('J_n', () =>

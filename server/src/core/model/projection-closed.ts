@@ -1,6 +1,7 @@
 import { legendreQAbove } from '../special/legendre-q';
 import { scaledModifiedSphericalBessel } from '../special/modified-spherical-bessel';
 import type { LocalPiece, PoleTerm } from './transform';
+import { planeProjection } from './projection-plane';
 import { positionProjection } from './projection-position';
 import { wellProjection } from './projection-well';
 
@@ -12,7 +13,7 @@ export function specialProjection(piece: LocalPiece, dimension: 2 | 3, l: number
   const { family } = piece;
   if (family.kind === 'well') return wellProjection(dimension, l, family.radius);
   if (family.kind === 'edged') return positionProjection(family.panels, dimension, l);
-  if (dimension === 2) return null;
+  if (dimension === 2) return planeProjection(piece, l);
   if (family.kind === 'gaussian' && family.coefficients.length === 1) return gaussian(family.coefficients[0], family.alpha, l);
   if (family.kind !== 'poles') return null;
   const square = family.mass ** 2;
