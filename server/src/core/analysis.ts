@@ -85,7 +85,9 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   const results: TermResult[] = setup.list.terms.map((_, n) => {
     const found = evaluation ? valuesOf(setup, evaluation, n).slice(0, asked.reported) : [];
     // Loops that the cutoff does not make finite have no value at any cutoff.
-    const values = symbolic.terms[n].tooSoft ? found.map(({ p, E }) => ({ p, E, bare: null, renormalised: null, uncertainty: null })) : found;
+    const values = symbolic.terms[n].tooSoft
+      ? found.map(({ p, E }) => ({ p, E, bare: null, renormalised: null, uncertainty: null }))
+      : found;
     const one = termResult(setup, n, terms[n], status[n], values, infrared.verdicts[n]);
     const scan = evaluation && !symbolic.terms[n].tooSoft && scanOf(evaluation, n);
     return scan ? { ...one, scan } : one;
