@@ -1,7 +1,8 @@
 import { judge } from './expectations';
 import type { ModelSpec } from './model/spec';
 import type { ConvergenceResult, ModelResults, ObservablesResult, Remark, SumResult, TermResult, Ultraviolet } from './results';
-import { bindingEnergies, convergenceAt, fullAmplitude, potentialParts } from './scattering/solution';
+import { boundStates } from './scattering/bound-states';
+import { convergenceAt, fullAmplitude, potentialParts } from './scattering/solution';
 import { lowEnergy } from './scattering/low-energy';
 import { CutoffGrid, type OnShellPoint } from './series/amplitudes';
 import { cost } from './series/cost';
@@ -198,25 +199,27 @@ function solve(setup: Setup, evaluation: Evaluation | null, points: readonly OnS
     const solved = fullAmplitude(grid!, parts, point);
     return Number.isFinite(solved.forward.re) ? { ...solved, p: point.p } : null;
   });
-  return { wanted, convergence, full, observables: wanted && grid ? observablesOf(grid, parts, setup) : null };
+  return { wanted, convergence, full, observables: wanted && grid ? observablesOf(grid, parts, stop) : null };
 }
 
-function observablesOf(grid: CutoffGrid, parts: ReturnType<typeof potentialParts>, setup: Setup): ObservablesResult | null {
+function observablesOf(grid: CutoffGrid, parts: ReturnType<typeof potentialParts>, stop: () => void): ObservablesResult | null {
+  const { setup } = grid;
   const low = lowEnergy(grid, parts, Math.min(setup.momentum, grid.cutoff / 10) / 20);
   const real = parts.every(p => p.vertex.element.real && p.strength.im === 0);
-  const bound = real && setup.kinematics.threshold > -Infinity ? bindingEnergies(grid, parts) : null;
+  const coarse = () => new CutoffGrid(setup, grid.cutoff, [setup.momentum], 8);
+  const bound = real && setup.kinematics.threshold > -Infinity ? boundStates(grid, coarse(), parts, stop) : null;
   if (!low && !bound) return null;
   const finite = low && Number.isFinite(low.scatteringLength) && Number.isFinite(low.scatteringLengthError);
   const range = low && low.effectiveRange !== null && Number.isFinite(low.effectiveRange) && Number.isFinite(low.effectiveRangeError);
   return {
     ...(finite ? { scattering_length: low.scatteringLength } : {}),
     ...(range ? { effective_range: low.effectiveRange } : {}),
-    ...(bound ? { binding_energies: bound } : {}),
+    ...(bound ? { binding_energies: bound.map(b => b.energy) } : {}),
     definition: low?.definition ?? 'binding energies from the threshold',
     uncertainties: {
       ...(finite ? { scattering_length: low.scatteringLengthError } : {}),
       ...(range ? { effective_range: low.effectiveRangeError } : {}),
-      ...(bound ? { binding_energies: bound.map(e => 1e-9 * e) } : {}),
+      ...(bound ? { binding_energies: bound.map(b => b.error) } : {}),
     },
   };
 }

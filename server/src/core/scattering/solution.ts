@@ -2,8 +2,7 @@ import type { Complex } from '../algebra/expression';
 import type { ConvergenceResult } from '../results';
 import { nearest, onShellWeights, type CutoffGrid, type OnShellPoint, type Strength } from '../series/amplitudes';
 import type { ScaledVertex } from '../series/grid-chain';
-import { loopWeights } from '../series/loop-weights';
-import { amplitudeFromStandingWave, boundStateDeterminant, standingWave } from './full';
+import { amplitudeFromStandingWave, standingWave } from './full';
 import { potentialMatrix } from './potential';
 import { weinbergEigenvalues } from './weinberg';
 
@@ -73,31 +72,4 @@ export function convergenceAt(at: CutoffGrid, point: OnShellPoint): ConvergenceR
     converges: decided ? size < 1 : null,
     eigenvalues: Number.isFinite(size) ? values : [],
   };
-}
-
-/** Binding energies below threshold, deepest first: zeros of det(1 - V G(E)), looked for at 160 momenta κ from 1e-4 of the cutoff to twice it. */
-export function bindingEnergies(at: CutoffGrid, parts: readonly ScaledVertex[]): number[] {
-  const { kinematics, regulator } = at.setup;
-  const threshold = kinematics.threshold;
-  const value = (kappa: number) => {
-    const E = threshold - (kinematics.energy(kappa) - threshold);
-    const problem = loopWeights(kinematics, regulator, at.grid, { re: E, im: 0 }, false, [], 0);
-    const { sign, log } = boundStateDeterminant(potentialMatrix(at.kernels, parts, problem), problem);
-    return sign * Math.exp(Math.min(600, log));
-  };
-  const ladder = Array.from({ length: 160 }, (_, j) => at.cutoff * 1e-4 * 2e4 ** (j / 159));
-  const values = ladder.map(value);
-  const found: number[] = [];
-  for (let j = ladder.length - 2; j >= 0; j--) {
-    if (values[j] > 0 === values[j + 1] > 0) continue;
-    let [low, high] = [ladder[j], ladder[j + 1]];
-    const below = values[j] > 0;
-    for (let n = 0; n < 60 && high - low > 1e-12 * high; n++) {
-      const middle = (low + high) / 2;
-      if (value(middle) > 0 === below) low = middle;
-      else high = middle;
-    }
-    found.push(kinematics.energy((low + high) / 2) - threshold);
-  }
-  return found;
 }
