@@ -72,7 +72,7 @@ describe('potentials', () => {
   // Malfliet and Tjon, Nucl. Phys. A 127 (1969) 161.
   it('two nucleons bound by MT-III', () => {
     const grid = at('(1438.720*exp(-3.11*r) - 626.885*exp(-1.55*r))/r', 'r', 0.2, 1500, { mu: 1 / (2 * 41.47) });
-    const states = boundStates(grid, new CutoffGrid(grid.setup, grid.cutoff, [0.2], 8), potentialParts(grid, []), () => {});
+    const states = boundStates(grid.setup, grid.cutoff, potentialParts(grid, []), () => {});
     expect(states).toHaveLength(1);
     expect(states[0].energy).toBeCloseTo(-potentials.malflietTjonIII.energy, 4);
     // A sharp cutoff of 1500 fm^-1 is not infinity: that is no part of the grid's error.

@@ -1,5 +1,6 @@
 import { join } from 'node:path';
 import { describe, expect, test } from 'vitest';
+import type { ModelResults } from '../../server/src/core/results';
 import { findingsOf } from '../../server/src/findings';
 import type { Finding } from '../../server/src/findings/finding';
 import { fileFinding } from '../../server/src/findings/file';
@@ -66,6 +67,43 @@ describe('the report for a person', () => {
     expect(textReport([unread], 80, plainPalette)).toBe(
       'error  other.tare  file\n  There is no such file.\n\n1 file, 0 models: 1 error.\n',
     );
+  });
+});
+
+describe('the solution beyond the series', () => {
+  const solved = (results: Partial<ModelResults>): string =>
+    textReport([fileOf(checkedWire({ results: all => ({ ...all, ...results }) }))], 100, plainPalette);
+
+  test('is shown where there is one, with what it lets through', () => {
+    const shown = solved({
+      sum: [
+        {
+          p: 0.05,
+          E: 0.00125,
+          orders: [1],
+          byOrder: [{ re: 1, im: 0 }],
+          full: { re: 0.5, im: -0.25 },
+          transmission: 0.75,
+          reflection: 0.25,
+        },
+      ],
+    });
+    expect(shown).toMatch(/solved at p = 0\.05 +T = 0\.5 − 0\.25i +transmitted 0\.75, reflected 0\.25/);
+  });
+
+  test('gives low-energy numbers with their errors and definition', () => {
+    const shown = solved({
+      observables: {
+        scattering_length: -5.25,
+        binding_energies: [0.5, 0.125],
+        definition: 'p cot(delta) = -1/a + r p^2/2',
+        uncertainties: { scattering_length: 0.01, binding_energies: [0.001, 0.0001] },
+      },
+    });
+    expect(shown).toMatch(/scattering length +−5\.25\(1\) +p cot\(delta\)/);
+    expect(shown).toMatch(/bound state +0\.500\(1\) below threshold/);
+    expect(shown).toMatch(/bound state +0\.1250\(1\) below threshold/);
+    expect(shown).not.toContain('effective range');
   });
 });
 

@@ -206,8 +206,7 @@ function observablesOf(grid: CutoffGrid, parts: ReturnType<typeof potentialParts
   const { setup } = grid;
   const low = lowEnergy(grid, parts, Math.min(setup.momentum, grid.cutoff / 10) / 20);
   const real = parts.every(p => p.vertex.element.real && p.strength.im === 0);
-  const coarse = () => new CutoffGrid(setup, grid.cutoff, [setup.momentum], 8);
-  const bound = real && setup.kinematics.threshold > -Infinity ? boundStates(grid, coarse(), parts, stop) : null;
+  const bound = real && setup.kinematics.threshold > -Infinity ? boundStates(setup, grid.cutoff, parts, stop) : null;
   if (!low && !bound) return null;
   const finite = low && Number.isFinite(low.scatteringLength) && Number.isFinite(low.scatteringLengthError);
   const range = low && low.effectiveRange !== null && Number.isFinite(low.effectiveRange) && Number.isFinite(low.effectiveRangeError);

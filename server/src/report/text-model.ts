@@ -6,6 +6,7 @@ import { formatComplex, formatNumber, listed } from '../findings/words/numbers';
 import type { CheckedModel } from '../session/checked';
 import { aligned, fitted, harmless, wrapped, type Cell } from './columns';
 import type { Palette } from './palette';
+import { solutionRows } from './text-solution';
 import { shapeInWords, waveInWords } from './spec-words';
 
 const indent = '  ';
@@ -19,6 +20,7 @@ export function modelText({ source, results }: CheckedModel, width: number, pale
   const parts = [
     termRows(spec, results, inner, palette),
     countertermRows(spec, results, inner, palette),
+    solutionRows(spec, results, inner, palette),
     expectationRows(results, inner, palette),
   ];
   const head = wrapped(headline(spec), inner).map(line => indent + palette.faint(line));

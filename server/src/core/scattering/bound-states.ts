@@ -1,6 +1,7 @@
-import type { CutoffGrid } from '../series/amplitudes';
+import { CutoffGrid } from '../series/amplitudes';
 import type { ScaledVertex } from '../series/grid-chain';
 import { loopWeights } from '../series/loop-weights';
+import type { Setup } from '../series/setup';
 import { boundStateDeterminant } from './full';
 import { potentialMatrix } from './potential';
 
@@ -15,33 +16,39 @@ const TRIALS = 160;
 const LOWEST = 1e-4;
 
 /**
- * Zeros of det(1 - V G(E)) below threshold, deepest first: found on the coarse grid, followed on the fine one; the error is what lies between
- * them. States bound by less than E(κ = 1e-4 of the cutoff), and pairs of states between two trials, are not seen. Real potentials only.
+ * Zeros of det(1 - V G(E)) below threshold at this cutoff, deepest first: looked for on a coarse grid, then followed on two that resolve the
+ * momentum κ found, whose difference is the error. States with κ below 1e-4 of the cutoff, and pairs of states between two trials, are not
+ * seen. Real potentials only.
  */
-export function boundStates(fine: CutoffGrid, coarse: CutoffGrid, parts: readonly ScaledVertex[], stop: () => void): BoundState[] {
-  const trials = Array.from({ length: TRIALS }, (_, j) => coarse.cutoff * LOWEST * (2 / LOWEST) ** (j / (TRIALS - 1)));
+export function boundStates(setup: Setup, cutoff: number, parts: readonly ScaledVertex[], stop: () => void): BoundState[] {
+  const search = new CutoffGrid(setup, cutoff, [setup.momentum], 8);
+  const trials = Array.from({ length: TRIALS }, (_, j) => cutoff * LOWEST * (2 / LOWEST) ** (j / (TRIALS - 1)));
   const values = trials.map(kappa => {
     stop();
-    return determinantAt(coarse, parts, kappa);
+    return determinantAt(search, parts, kappa);
   });
   const states: BoundState[] = [];
   for (let j = trials.length - 2; j >= 0; j--) {
     if (values[j] > 0 === values[j + 1] > 0) continue;
-    const first = zero(kappa => determinantAt(coarse, parts, kappa), trials[j], trials[j + 1]);
-    const second = zero(kappa => determinantAt(fine, parts, kappa), trials[j], trials[j + 1]);
-    if (first === null || second === null) continue;
-    const energy = depth(fine, second);
-    states.push({ energy, error: Math.abs(energy - depth(fine, first)) + 1e-11 * energy });
+    const rough = zero(kappa => determinantAt(search, parts, kappa), trials[j], trials[j + 1])!;
+    const [coarse, fine] = [12, 16].map(nodes => {
+      const at = new CutoffGrid(setup, cutoff, [rough], nodes);
+      return zero(kappa => determinantAt(at, parts, kappa), trials[j], trials[j + 1]);
+    });
+    // A state at the very edge of the interval may lie just beyond it on another grid: then the interval is all that is known.
+    const energy = depth(setup, fine ?? rough);
+    const other = depth(setup, coarse !== null && fine !== null ? coarse : energy > depth(setup, trials[j]) ? trials[j] : trials[j + 1]);
+    states.push({ energy, error: Math.abs(energy - other) + 1e-11 * energy });
   }
   return states;
 }
 
 /** Binding energy of the trial momentum κ. */
-const depth = ({ setup: { kinematics } }: CutoffGrid, kappa: number): number => kinematics.energy(kappa) - kinematics.threshold;
+const depth = ({ kinematics }: Setup, kappa: number): number => kinematics.energy(kappa) - kinematics.threshold;
 
 function determinantAt(at: CutoffGrid, parts: readonly ScaledVertex[], kappa: number): number {
   const { kinematics, regulator } = at.setup;
-  const E = kinematics.threshold - depth(at, kappa);
+  const E = kinematics.threshold - depth(at.setup, kappa);
   const problem = loopWeights(kinematics, regulator, at.grid, { re: E, im: 0 }, false, [], 0);
   const { sign, log } = boundStateDeterminant(potentialMatrix(at.kernels, parts, problem), problem);
   return sign * Math.exp(Math.min(600, log));
