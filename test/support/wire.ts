@@ -107,7 +107,7 @@ function twistSquared(cancelled: boolean): TermResult {
         backward: { bare: complex(-3.119436885), renormalised: complex(-0.0000389934) },
       },
     ],
-    scan: { p: 0.05, cutoff: cutoffs, bare, renormalised: cancelled ? left : bare },
+    scan: { p: 0.05, E: 0.00125, cutoff: cutoffs, bare, renormalised: cancelled ? left : bare },
   });
 }
 

@@ -4,7 +4,7 @@ import type { ConvergenceResult, ModelResults, ObservablesResult, Remark, SumRes
 import { boundStates } from './scattering/bound-states';
 import { convergenceAt, fullAmplitude, potentialParts } from './scattering/solution';
 import { lowEnergy } from './scattering/low-energy';
-import { CutoffGrid, type OnShellPoint } from './series/amplitudes';
+import { CutoffGrid, named, type OnShellPoint } from './series/amplitudes';
 import { cost } from './series/cost';
 import { byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation } from './series/evaluation';
 import { onShellPoints } from './series/points';
@@ -87,7 +87,7 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
     const found = evaluation ? valuesOf(setup, evaluation, n).slice(0, asked.reported) : [];
     // Loops that the cutoff does not make finite have no value at any cutoff.
     const values = symbolic.terms[n].tooSoft
-      ? found.map(({ p, E }) => ({ p, E, bare: null, renormalised: null, uncertainty: null }))
+      ? found.map(value => ({ ...value, bare: null, renormalised: null, uncertainty: null }))
       : found;
     const one = termResult(setup, n, terms[n], status[n], values, infrared.verdicts[n]);
     const scan = evaluation && !symbolic.terms[n].tooSoft && scanOf(evaluation, n);
@@ -146,7 +146,7 @@ function scanOf(evaluation: Evaluation, n: number): TermResult['scan'] | null {
   const usable = evaluation.scan.filter(s => Number.isFinite(s.bare[0][n].forward.re) && Number.isFinite(s.renormalised[0][n].forward.re));
   if (!usable.length) return null;
   return {
-    p: evaluation.points[0].p,
+    ...named(evaluation.points[0]),
     cutoff: usable.map(s => s.cutoff),
     bare: usable.map(s => s.bare[0][n].forward),
     renormalised: usable.map(s => s.renormalised[0][n].forward),
@@ -171,7 +171,7 @@ function sums(
         }
       : {};
     const scanned = evaluation.scan.length ? { drift: driftOf(setup, evaluation, j) } : {};
-    return [{ p: point.p, E: point.E, orders, byOrder: values, ...beyond, ...scanned }];
+    return [{ ...named(point), orders, byOrder: values, ...beyond, ...scanned }];
   });
 }
 
@@ -199,14 +199,14 @@ function solve(setup: Setup, evaluation: Evaluation | null, points: readonly OnS
     const solved = fullAmplitude(grid!, parts, point);
     return Number.isFinite(solved.forward.re) ? { ...solved, p: point.p } : null;
   });
-  return { wanted, convergence, full, observables: wanted && grid ? observablesOf(grid, parts, stop) : null };
+  return { wanted, convergence, full, observables: wanted && grid ? observablesOf(setup, parts, stop) : null };
 }
 
-function observablesOf(grid: CutoffGrid, parts: ReturnType<typeof potentialParts>, stop: () => void): ObservablesResult | null {
-  const { setup } = grid;
-  const low = lowEnergy(grid, parts, Math.min(setup.momentum, grid.cutoff / 10) / 20);
+function observablesOf(setup: Setup, parts: ReturnType<typeof potentialParts>, stop: () => void): ObservablesResult | null {
+  const cutoff = setup.spec.cutoff.value;
+  const low = lowEnergy(setup, cutoff, parts, Math.min(setup.momentum, cutoff / 10) / 20);
   const real = parts.every(p => p.vertex.element.real && p.strength.im === 0);
-  const bound = real && setup.kinematics.threshold > -Infinity ? boundStates(setup, grid.cutoff, parts, stop) : null;
+  const bound = real && setup.kinematics.threshold > -Infinity ? boundStates(setup, cutoff, parts, stop) : null;
   if (!low && !bound) return null;
   const finite = low && Number.isFinite(low.scatteringLength) && Number.isFinite(low.scatteringLengthError);
   const range = low && low.effectiveRange !== null && Number.isFinite(low.effectiveRange) && Number.isFinite(low.effectiveRangeError);

@@ -31,7 +31,8 @@ export interface TermResult {
   readonly cancelledBy: readonly string[];
   readonly values: readonly ValueResult[];
   readonly scan?: {
-    readonly p: number;
+    readonly p?: number;
+    readonly E: number;
     readonly cutoff: readonly number[];
     readonly bare: readonly Complex[];
     readonly renormalised: readonly Complex[];

@@ -4,7 +4,7 @@ import type { ModelSpec } from '../core/model/spec';
 import { rangeInWords, type Plot } from '../report/plot';
 import { growthInWords } from '../findings/words/growth';
 import { formatNumber } from '../findings/words/numbers';
-import { momentumUnit } from '../findings/words/momenta';
+import { pointInWords } from '../findings/words/momenta';
 
 /** The amplitude of a monomial against the cutoff, bare and renormalised: the part, real or imaginary, that moves more. */
 export function amplitudePlot({ monomial, scan, ultraviolet, status }: TermResult, spec: ModelSpec): Plot | null {
@@ -17,9 +17,9 @@ export function amplitudePlot({ monomial, scan, ultraviolet, status }: TermResul
   const grows = ultraviolet.verdict === 'diverges' ? ` It diverges ${growthInWords(ultraviolet, spec.cutoff.name)}.` : '';
   return {
     title: `${monomial} against the cutoff`,
-    description: `${amplitude} of ${monomial} at p = ${formatNumber(scan.p)}${momentumUnit(spec)} while ${spec.cutoff.name} runs over ${rangeInWords(scan.cutoff)}: bare from ${rangeInWords(bare)}${both ? `, renormalised from ${rangeInWords(renormalised)}` : ''}.${grows}`,
+    description: `${amplitude} of ${monomial} at ${pointInWords(scan, spec)} while ${spec.cutoff.name} runs over ${rangeInWords(scan.cutoff)}: bare from ${rangeInWords(bare)}${both ? `, renormalised from ${rangeInWords(renormalised)}` : ''}.${grows}`,
     ...against(scan.cutoff, spec),
-    yLabel: `${amplitude}, ${monomial} at p = ${formatNumber(scan.p)}`,
+    yLabel: `${amplitude}, ${monomial} at ${pointInWords(scan, spec)}`,
     curves: both
       ? [
           { name: 'bare', y: bare },
@@ -85,9 +85,9 @@ export function seriesPlot(terms: readonly TermResult[], spec: ModelSpec): Plot 
   const amplitude = `${part === 're' ? 'Re' : 'Im'} T`;
   return {
     title: 'The series against the cutoff',
-    description: `${amplitude} of the sum at p = ${formatNumber(first.p)}${momentumUnit(spec)} while ${spec.cutoff.name} runs over ${rangeInWords(first.cutoff)}: bare from ${rangeInWords(bare)}, renormalised from ${rangeInWords(renormalised)}.`,
+    description: `${amplitude} of the sum at ${pointInWords(first, spec)} while ${spec.cutoff.name} runs over ${rangeInWords(first.cutoff)}: bare from ${rangeInWords(bare)}, renormalised from ${rangeInWords(renormalised)}.`,
     ...against(first.cutoff, spec),
-    yLabel: `${amplitude}, sum at p = ${formatNumber(first.p)}`,
+    yLabel: `${amplitude}, sum at ${pointInWords(first, spec)}`,
     curves: [
       { name: 'bare', y: bare },
       { name: 'renormalised', y: renormalised },

@@ -53,7 +53,14 @@ function termJson({ monomial, order, ultraviolet, infrared, status, cancelledBy,
     status,
     cancelledBy,
     values: values.map(valueJson),
-    ...(scan && { scan: { p: scan.p, cutoff: scan.cutoff, bare: scan.bare.map(complex), renormalised: scan.renormalised.map(complex) } }),
+    ...(scan && {
+      scan: {
+        ...(scan.p === undefined ? { E: scan.E } : { p: scan.p }),
+        cutoff: scan.cutoff,
+        bare: scan.bare.map(complex),
+        renormalised: scan.renormalised.map(complex),
+      },
+    }),
   };
 }
 

@@ -1,6 +1,7 @@
 import { digamma } from '../special/digamma';
-import type { CutoffGrid } from '../series/amplitudes';
+import { CutoffGrid } from '../series/amplitudes';
 import type { ScaledVertex } from '../series/grid-chain';
+import type { Setup } from '../series/setup';
 import { fullAmplitude } from './solution';
 
 /** Scattering length and effective range, with errors; null where the wave has no such definition. */
@@ -12,14 +13,18 @@ export interface LowEnergy {
   readonly effectiveRangeError: number;
 }
 
+/** What the linear solver leaves. */
+const ROUNDING = 1e-12;
+
 /**
  * From the full solution at a few small momenta: F(p²) = -1/a + r p²/2 by a polynomial through them, F = p^(2l+1) cot δ in dimension 3,
  * p tan δ₊ (with the opposite sign) and p cot δ₋ in dimension 1; in dimension 2 (m = 0) a from cot δ - (2/π)(ln(p/2) + γ).
  */
-export function lowEnergy(at: CutoffGrid, parts: readonly ScaledVertex[], momentum: number): LowEnergy | null {
-  const { spec, kinematics } = at.setup;
+export function lowEnergy(setup: Setup, cutoff: number, parts: readonly ScaledVertex[], momentum: number): LowEnergy | null {
+  const { spec, kinematics } = setup;
   const definition = definitionOf(spec.dimension, spec.wave);
   if (!definition) return null;
+  const at = new CutoffGrid(setup, cutoff, [momentum / 2], 12);
   const fit = (unit: number) => {
     const momenta = [1, 2, 3, 4].map(j => unit * j);
     const values = momenta.map(p => {
@@ -34,20 +39,26 @@ export function lowEnergy(at: CutoffGrid, parts: readonly ScaledVertex[], moment
   const [coarse, fine] = [fit(momentum), fit(momentum / 2)];
   if (spec.dimension === 2) {
     const [a, b] = [coarse, fine].map(c => Math.exp((c[0] * Math.PI) / 2));
-    return { definition, scatteringLength: b, scatteringLengthError: Math.abs(a - b), effectiveRange: null, effectiveRangeError: 0 };
+    return {
+      definition,
+      scatteringLength: b,
+      scatteringLengthError: Math.abs(a - b) + ROUNDING * b,
+      effectiveRange: null,
+      effectiveRangeError: 0,
+    };
   }
   const [a, b] = [coarse, fine].map(c => -1 / c[0]);
   const [r, s] = [coarse, fine].map(c => 2 * c[1]);
   return {
     definition,
     scatteringLength: b,
-    scatteringLengthError: Math.abs(a - b),
+    scatteringLengthError: Math.abs(a - b) + ROUNDING * Math.abs(b),
     effectiveRange: s,
-    effectiveRangeError: Math.abs(r - s),
+    effectiveRangeError: Math.abs(r - s) + ROUNDING * Math.abs(s),
   };
 }
 
-type Wave = CutoffGrid['setup']['spec']['wave'];
+type Wave = Setup['spec']['wave'];
 
 function definitionOf(dimension: number, wave: Wave): string | null {
   if (dimension === 3 && wave.kind === 'angular')

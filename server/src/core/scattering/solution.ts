@@ -1,6 +1,6 @@
 import type { Complex } from '../algebra/expression';
 import type { ConvergenceResult } from '../results';
-import { nearest, onShellWeights, type CutoffGrid, type OnShellPoint, type Strength } from '../series/amplitudes';
+import { named, nearest, onShellWeights, type CutoffGrid, type OnShellPoint, type Strength } from '../series/amplitudes';
 import type { ScaledVertex } from '../series/grid-chain';
 import { amplitudeFromStandingWave, standingWave } from './full';
 import { potentialMatrix } from './potential';
@@ -40,6 +40,8 @@ export function fullAmplitude(at: CutoffGrid, parts: readonly ScaledVertex[], po
   const leg = at.setup.regulator.leg(point.p / at.cutoff) ** 2;
   const scaled = (c: Complex): Complex => ({ re: c.re * leg, im: c.im * leg });
   const forward = t[column][column];
+  if (point.below)
+    return { forward: scaled(forward), backward: null, phaseShift: null, transmission: null, reflection: null, tangent: NaN };
   const density = problem.density[column];
   if (at.setup.kinematics.signed) {
     const backward = t[nearest(problem.externals, -point.p)][column];
@@ -66,8 +68,7 @@ export function convergenceAt(at: CutoffGrid, point: OnShellPoint): ConvergenceR
   const size = Math.hypot(largest.re, largest.im);
   const decided = Math.abs(size - 1) > residual && Number.isFinite(size);
   return {
-    p: point.p,
-    E: point.E,
+    ...named(point),
     largestEigenvalue: Number.isFinite(size) ? largest : null,
     converges: decided ? size < 1 : null,
     eigenvalues: Number.isFinite(size) ? values : [],

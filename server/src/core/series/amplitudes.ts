@@ -25,11 +25,18 @@ export interface Strength {
   readonly value: Complex;
 }
 
-/** An on-shell momentum asked for, with its energy. */
+/**
+ * An on-shell momentum asked for, with its energy. `below`: the energy is below threshold by as much as that of p is above it, and the
+ * amplitude is T(p, p; E), off shell.
+ */
 export interface OnShellPoint {
   readonly p: number;
   readonly E: number;
+  readonly below?: boolean;
 }
+
+/** A point as results name it: by its momentum too where it is on shell. */
+export const named = ({ p, E, below }: OnShellPoint): { p?: number; E: number } => (below ? { E } : { p, E });
 
 /** Everything at one cutoff: amplitudes at [momentum][monomial], regulator of the external legs included. */
 export interface CutoffResult {
@@ -127,10 +134,17 @@ export function seriesAtCutoff(at: CutoffGrid, points: readonly OnShellPoint[], 
   };
 }
 
-/** The problem of one on-shell point; at threshold, where the propagator has no pole, the amplitude at p itself. */
+/** The problem of one point; at threshold and below, where the propagator has no pole, the amplitude at p itself. */
 export function onShellWeights(at: CutoffGrid, { p, E }: OnShellPoint): LoopWeights {
   const weights = weightsAt(at, E, true, []);
-  return weights.externals.length ? weights : weightsAt(at, E, false, [p]);
+  return weights.externals.length ? weights : withoutWeight(weightsAt(at, E, false, externalsAt(at.setup.kinematics, p)));
+}
+
+/** The external momenta as loop momenta of no weight, so that every solver finds them where it looks for on-shell ones. */
+function withoutWeight(problem: LoopWeights): LoopWeights {
+  const count = problem.externals.length;
+  const padded = (g: Float64Array) => (g.length ? Float64Array.from([...g, ...new Float64Array(count)]) : g);
+  return { ...problem, g: { re: padded(problem.g.re), im: padded(problem.g.im) }, density: problem.externals.map(() => 0) };
 }
 
 function weightsAt({ setup, grid }: CutoffGrid, E: number, onShell: boolean, others: readonly number[]): LoopWeights {

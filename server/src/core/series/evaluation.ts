@@ -1,6 +1,6 @@
 import type { Complex } from '../algebra/expression';
 import type { CountertermResult, CouplingResult, ValueResult } from '../results';
-import { CutoffGrid, seriesAtCutoff, type CutoffResult, type OnShellPoint } from './amplitudes';
+import { CutoffGrid, named, seriesAtCutoff, type CutoffResult, type OnShellPoint } from './amplitudes';
 import type { StrengthLaw } from './contact-declared';
 import { isMultipleOf } from './forms';
 import type { Setup } from './setup';
@@ -58,7 +58,7 @@ export function scanCutoffs(setup: Setup): number[] {
 /** Values of monomial n at each momentum, with the error from the second grid, from the kernels and from rounding. */
 export function valuesOf(setup: Setup, evaluation: Evaluation, n: number): ValueResult[] {
   const kernelError = Math.max(1e-15, ...setup.vertices.map(v => v.element.relativeError)) * setup.list.terms[n].factors;
-  return evaluation.points.map(({ p, E }, j) => {
+  return evaluation.points.map((point, j) => {
     const bare = evaluation.at.bare[j][n];
     const renormalised = evaluation.at.renormalised[j][n];
     const other = evaluation.coarse;
@@ -71,10 +71,10 @@ export function valuesOf(setup: Setup, evaluation: Evaluation, n: number): Value
     const gap = Math.max(...pairs.map(([x, y]) => (x && y ? distance(x, y) : 0)));
     const size = Math.max(modulus(bare.forward), bare.backward ? modulus(bare.backward) : 0);
     const uncertainty = gap + kernelError * size + 4e-15 * size;
-    if (!Number.isFinite(uncertainty)) return { p, E, bare: null, renormalised: null, uncertainty: null };
+    if (!Number.isFinite(uncertainty)) return { ...named(point), bare: null, renormalised: null, uncertainty: null };
     const backward =
       bare.backward && renormalised.backward ? { backward: { bare: bare.backward, renormalised: renormalised.backward } } : {};
-    return { p, E, bare: bare.forward, renormalised: renormalised.forward, ...backward, uncertainty };
+    return { ...named(point), bare: bare.forward, renormalised: renormalised.forward, ...backward, uncertainty };
   });
 }
 

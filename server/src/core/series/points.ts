@@ -15,33 +15,18 @@ export interface AskedPoints {
 }
 
 export function onShellPoints(setup: Setup): AskedPoints {
-  const { spec, kinematics, regulator } = setup;
+  const { spec, regulator } = setup;
   const points: OnShellPoint[] = [];
   const remarks: Remark[] = [];
   const byAsked = new Map<string, OnShellPoint | null>();
   const keyOf = (asked: Asked) => `${asked.p}/${asked.E}`;
   const add = (asked: Asked, subject: string | null): void => {
     if (byAsked.has(keyOf(asked))) return;
-    const roots =
-      asked.p !== null
-        ? [asked.p]
-        : kinematics
-            .roots(asked.E!)
-            .map(r => r.p)
-            .filter(p => p > 0);
-    const usable = roots.filter(p => {
+    const found = pointsOf(setup, asked).filter(({ p }) => {
       const reason = reasonAgainst(setup, p, regulator.shape.kind === 'sharp');
       if (reason) remarks.push({ ...reason, subject, p });
       return !reason;
     });
-    if (!roots.length) {
-      remarks.push({
-        code: 'not-evaluated',
-        subject,
-        message: `The energy ${asked.E} lies below threshold, where there is no on-shell momentum: this version evaluates amplitudes above threshold.`,
-      });
-    }
-    const found = usable.map(p => ({ p, E: kinematics.energy(p) }));
     points.push(...found);
     byAsked.set(keyOf(asked), found[0] ?? null);
   };
@@ -49,6 +34,19 @@ export function onShellPoints(setup: Setup): AskedPoints {
   const reported = points.length;
   for (const e of spec.expectations) if (e.kind !== 'finite' && e.point) add(e.point, null);
   return { points, reported, remarks, find: asked => byAsked.get(keyOf(asked)) ?? null };
+}
+
+/** At an energy below threshold T(κ, κ; E), κ the momentum whose energy lies as far above it. */
+function pointsOf({ kinematics }: Setup, { p, E }: Asked): OnShellPoint[] {
+  if (p !== null) return [{ p, E: kinematics.energy(p) }];
+  const momentaAt = (energy: number) =>
+    kinematics
+      .roots(energy)
+      .map(root => root.p)
+      .filter(k => k > 0);
+  const onShell = momentaAt(E!);
+  if (onShell.length || E! >= kinematics.threshold) return onShell.map(k => ({ p: k, E: kinematics.energy(k) }));
+  return momentaAt(2 * kinematics.threshold - E!).map(k => ({ p: k, E: E!, below: true }));
 }
 
 function reasonAgainst({ spec, kinematics }: Setup, p: number, sharp: boolean): Pick<Remark, 'code' | 'message'> | null {

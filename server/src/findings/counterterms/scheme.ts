@@ -12,18 +12,19 @@ export interface Scheme {
 /** The two schemes to offer: on shell at the lowest momentum of the series (below threshold where it has no other), and minimal. */
 export function schemesFor(model: Evaluated): { readonly onShell: Scheme; readonly minimal: Scheme } {
   const { spec } = model;
+  // A momentum that comes from an energy has digits that nobody would write: four of them will do.
   const momenta = spec.series.points.flatMap(({ p }) => (p !== null && p > 0 ? [p] : []));
   const lowest = Math.min(...momenta);
   const below = spec.series.points.flatMap(({ p, E }) => (p === null && E !== null && E < 0 ? [Math.sqrt(-2 * spec.mu * E)] : []));
   if (momenta.length === 0 && below.length > 0 && Number.isFinite(below[0])) {
-    const written = inUnit(Math.min(...below), spec);
+    const kappa = Number(Math.min(...below).toPrecision(4));
+    const written = inUnit(kappa, spec);
     return {
-      onShell: { words: `at kappa = ${written}`, onShellAt: Math.min(...below) },
+      onShell: { words: `at kappa = ${written}`, onShellAt: kappa },
       minimal: { words: `minimal at ${written}`, onShellAt: null },
     };
   }
   // A series without momenta: a tenth of the cutoff lies where the theory is meant to hold.
-  // A momentum that comes from an energy has digits that nobody would write.
   const at = momenta.length > 0 ? Number(lowest.toPrecision(4)) : Number((spec.cutoff.value / 10).toPrecision(2));
   const written = (momenta.length > 0 && asInText(model, lowest)) || inUnit(at, spec);
   return { onShell: { words: `at p = ${written}`, onShellAt: at }, minimal: { words: `minimal at ${written}`, onShellAt: null } };
