@@ -93,7 +93,7 @@ describe('statements', () => {
     ['cutoff L = 3\n            ! syntax: sharp'],
     ['cutoff L = 3 sharp scan 5 .. 5\n                             ^ value: upwards'],
     ['cutoff L = 3 sharp scan 5 .. 9 (1 points)\n                                ^ value: at least 2'],
-    ['series to 50\n          ^^ value: at most 8'],
+    ['series to 50\n          ^^ value: at most 12'],
     ['series to 0\n          ^ value: at least 1'],
     ['series to 2 at p = 0\n                   ^ value: positive'],
     ['series to 2 at p = 50\n                   ^^ value: beyond the sharp cutoff'],

@@ -2,7 +2,8 @@ import { readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import fc from 'fast-check';
 import { expect, test } from 'vitest';
-import { highestOrder, readSettings, standardSettings } from '../../server/src/session/settings';
+import { highestOrder } from '../../server/src/language/document';
+import { readSettings, standardSettings } from '../../server/src/session/settings';
 
 interface Property {
   readonly default: number;

@@ -27,5 +27,5 @@ export function checkFile(path: string, { overrides, full, progress }: CheckOpti
     full,
     progress: (model, done, what) => progress(path, `${model}, ${what}`, done),
   });
-  return { path, sha256: read.sha256, text: read.text, checked, findings: findingsOf(checked) };
+  return { path, sha256: read.sha256, text: read.text, checked, findings: [...read.faults, ...findingsOf(checked)] };
 }

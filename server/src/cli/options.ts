@@ -1,9 +1,7 @@
 import { InvalidArgumentError } from 'commander';
+import { highestOrder } from '../language/document';
 
 const decimal = /^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i;
-
-/** The highest order that may be asked for: above it the number of monomials grows beyond what a person can read. */
-export const highestOrder = 12;
 
 /** `--cutoff`: a momentum above 0, in each model's own unit. */
 export function readCutoff(text: string): number {

@@ -7,6 +7,7 @@ import { lowEnergy } from './scattering/low-energy';
 import { CutoffGrid, named, type OnShellPoint } from './series/amplitudes';
 import { cost } from './series/cost';
 import { byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation } from './series/evaluation';
+import { ladderWishes } from './series/ladder-wishes';
 import { onShellPoints } from './series/points';
 import { setUp, type Setup } from './series/setup';
 import { cancelledBy, declaredContacts, renormalisedConverges, statuses } from './series/statuses';
@@ -55,7 +56,7 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   const declared = declaredContacts(setup, symbolic);
   const asked = onShellPoints(setup);
   const remarks: Remark[] = [...lowering, ...symbolic.remarks, ...declared.remarks, ...asked.remarks];
-  const needed = cost(setup);
+  const needed = cost(setup, ladderWishes(setup, symbolic));
   if (needed > options.budget) {
     const message = `The numbers of this model would take about ${needed.toPrecision(2)} evaluations and ${options.budget.toPrecision(2)} are allowed: a lower order, fewer cutoffs or fewer momenta make it smaller.`;
     const results = symbolicResults(spec);

@@ -58,6 +58,9 @@ export interface SourceDocument {
   readonly models: readonly ModelInText[];
 }
 
+/** The highest order that may be asked for: above it the monomials are more than a person can read. */
+export const highestOrder = 12;
+
 /** What a model that declares no cutoff or series gets (from the settings); momenta in the model's unit. */
 export interface Defaults {
   readonly cutoff: number;

@@ -1,4 +1,4 @@
-import type { Defaults } from '../language/document';
+import { highestOrder, type Defaults } from '../language/document';
 
 /** What holds for a model that declares no cutoff or series, where neither the editor's settings nor the command line say otherwise. */
 export const standardDefaults: Defaults = { cutoff: 10, order: 3 };
@@ -10,9 +10,6 @@ export interface Settings {
 }
 
 export const standardSettings: Settings = { defaults: standardDefaults, keystrokeBudget: 5e9 };
-
-/** Above this order the number of monomials grows beyond what a person can read. */
-export const highestOrder = 12;
 
 /**
  * Settings from what an editor sent, which may be anything: what is missing or makes no sense is taken from `standardSettings`.

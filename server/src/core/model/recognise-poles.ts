@@ -15,9 +15,17 @@ function divisorsOf(expr: Expr, names: readonly string[], into: Expr[] = []): Ex
   const divides = expr.kind === 'divide' ? expr.right : expr.kind === 'power' && (realValue(expr.right) ?? 0) < 0 ? expr.left : null;
   if (divides) {
     const symbols = symbolsOf(divides);
-    if (names.some(name => symbols.has(name)) && !symbols.has('E')) into.push(divides);
+    if (names.some(name => symbols.has(name)) && !symbols.has('E')) into.push(...simpleFactors(divides));
   }
   return divisorsOf(expr.right, names, divisorsOf(expr.left, names, into));
+}
+
+/** What may vanish in a divisor, without powers: (1 - q^2)^2 vanishes where 1 - q^2 changes its sign. */
+function simpleFactors(expr: Expr): Expr[] {
+  if (expr.kind === 'negate') return simpleFactors(expr.argument);
+  if (expr.kind === 'multiply') return [...simpleFactors(expr.left), ...simpleFactors(expr.right)];
+  if (expr.kind === 'power' && (realValue(expr.right) ?? 0) > 0) return simpleFactors(expr.left);
+  return [expr];
 }
 
 /** Momenta looked at: eight decades either side of one, no round numbers. */

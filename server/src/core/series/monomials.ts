@@ -65,14 +65,37 @@ function buildList(interactions: readonly Pick<InteractionSpec, 'name' | 'order'
   const without = terms.map(t => t.exponents.map((n, i) => (n === 0 ? -1 : indexOf(t.exponents.map((m, j) => (j === i ? m - 1 : m))))));
   const known: (readonly Split[])[] = [];
   const splits = (n: number): readonly Split[] =>
-    (known[n] ??= terms
-      .slice(0, n)
-      .flatMap((t, inner) =>
-        isProperPart(t.exponents, terms[n].exponents) ? [{ inner, rest: indexOf(difference(terms[n].exponents, t.exponents)) }] : [],
-      ));
+    (known[n] ??= properParts(terms[n].exponents)
+      .map(part => ({ inner: indexOf(part), rest: indexOf(difference(terms[n].exponents, part)) }))
+      .sort((s, t) => s.inner - t.inner));
   const cheapest = Math.min(...interactions.map(i => i.order));
   const continues = terms.map(t => t.order + cheapest <= order);
   return { terms, indexOf, splits, continues, without };
+}
+
+/** Every monomial that divides this one, except 1 and itself. */
+function properParts(exponents: Monomial): Monomial[] {
+  const parts = exponents.reduce<number[][]>(
+    (some, n) => some.flatMap(part => Array.from({ length: n + 1 }, (_, m) => [...part, m])),
+    [[]],
+  );
+  return parts.slice(1, -1);
+}
+
+/** How many monomials there are up to an order, and in how many regions of large loop momenta their sequences are looked at. */
+export function countUpTo(orders: readonly number[], order: number): { monomials: number; regions: number } {
+  // Monomials of each total order, one interaction after another; then sequences of each length and total order.
+  const monomials = new Array<number>(order + 1).fill(0);
+  monomials[0] = 1;
+  for (const cost of orders) for (let n = cost; n <= order; n++) monomials[n] += monomials[n - cost];
+  let sequences = [1, ...new Array<number>(order).fill(0)];
+  let regions = 0;
+  for (let factors = 1; factors <= order; factors++) {
+    const longer = sequences.map((_, n) => orders.reduce((sum, cost) => sum + (n >= cost ? sequences[n - cost] : 0), 0));
+    regions += longer.reduce((sum, count) => sum + count, 0) * 2 ** (factors - 1);
+    sequences = longer;
+  }
+  return { monomials: monomials.reduce((sum, count) => sum + count, -1), regions };
 }
 
 function compareDeclared(s: Monomial, t: Monomial): number {

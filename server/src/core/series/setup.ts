@@ -7,7 +7,7 @@ import { localParts, vertexOf, type Vertex } from '../model/vertex';
 import type { Remark } from '../results';
 import { hardBehaviour, UnknownBehaviour, type HardBehaviour } from './hard-behaviour';
 import { propagatorFall } from './loop-moments';
-import { monomialsUpTo, type MonomialList } from './monomials';
+import { countUpTo, monomialsUpTo, type MonomialList } from './monomials';
 import type { Counterterm } from './subtraction';
 
 /** A model lowered to what the series is made of. */
@@ -32,6 +32,8 @@ export interface Setup {
 /** Lowers the model. Null vertices (with a remark) where a kernel has no matrix element: then nothing can be said about the model. */
 export function setUp(spec: ModelSpec): { setup: Setup | null; remarks: readonly Remark[] } {
   const remarks: Remark[] = [];
+  const tooMany = tooManyMonomials(spec);
+  if (tooMany) return { setup: null, remarks: [tooMany] };
   const couplings = new Map(spec.couplings.map(c => [c.name, c.value]));
   const lower = (interaction: InteractionSpec): Vertex | null => {
     try {
@@ -72,6 +74,27 @@ export function setUp(spec: ModelSpec): { setup: Setup | null; remarks: readonly
     remarks,
   };
   return { setup, remarks };
+}
+
+/** What an edit may take to look at: a second or two. */
+const MOST_MONOMIALS = 1500;
+const MOST_REGIONS = 3e6;
+
+function tooManyMonomials({ interactions, series }: ModelSpec): Remark | null {
+  const { monomials, regions } = countUpTo(
+    interactions.map(i => i.order),
+    series.order,
+  );
+  if (monomials <= MOST_MONOMIALS && regions <= MOST_REGIONS) return null;
+  const many =
+    monomials > MOST_MONOMIALS
+      ? `${monomials} monomials, and at most ${MOST_MONOMIALS} are looked at`
+      : `${regions.toPrecision(2)} regions of large loop momenta, and at most ${MOST_REGIONS.toPrecision(1)} are looked at`;
+  return {
+    code: 'budget',
+    message: `The series to order ${series.order} has ${many}: lower the order, or split the model.`,
+    subject: null,
+  };
 }
 
 function fallOf(kinematics: Kinematics): number | null {

@@ -9,8 +9,9 @@ import type { ScaledVertex } from './grid-chain';
 import type { StrengthLaw } from './contact-declared';
 import { fittedStrengths, minimalCounterterms } from './declared-strengths';
 import { infraredVerdicts } from './infrared';
-import { buildLadder, type Ladder, type LadderWishes } from './ladder';
-import { partialWave, type Setup } from './setup';
+import { buildLadder, type Ladder } from './ladder';
+import { ladderWishes, leavesSomething, needsNumbers, STEEPEST_REMAINDER } from './ladder-wishes';
+import type { Setup } from './setup';
 import type { SymbolicVerdicts } from './verdicts';
 import { formVertex } from './form-vertex';
 
@@ -32,13 +33,12 @@ export function fullUltraviolet(setup: Setup, symbolic: SymbolicVerdicts, should
   const remarks: Remark[] = [];
   const infinite = infraredVerdicts(setup).verdicts.map(v => v === 'diverges');
   const exact = symbolic.contacts ? contactOverall(symbolic.contacts) : [];
-  const dense = symbolic.terms.map(t => !t.contact && t.verdict !== 'undecided' && !t.tooSoft);
   const fitted: (FittedOverall | null)[] = symbolic.terms.map(() => null);
-  const ladder = buildLadder(setup, ladderWishes(setup, symbolic, dense));
+  const ladder = buildLadder(setup, ladderWishes(setup, symbolic));
   const bare = confirm(symbolic, ladder, shouldStop);
-  const fits = symbolic.terms.some((t, n) => dense[n] && t.overallDegree >= 0);
-  if (fits) fitDense(setup, symbolic, ladder, bare, dense, exact, fitted, 1, shouldStop);
-  const strengths = fits ? denseStrengths(setup, symbolic, ladder, bare, dense, fitted, shouldStop) : [];
+  const fits = symbolic.terms.some(leavesSomething);
+  if (fits) fitDense(setup, symbolic, ladder, bare, exact, fitted, 1, shouldStop);
+  const strengths = fits ? denseStrengths(setup, symbolic, ladder, bare, fitted, shouldStop) : [];
   const forms = symbolic.terms.map((_, n): OverallForm[] => {
     const list: readonly FittedForm[] =
       exact[n]?.forms.map(f => ({ ...f, uncertainty: 1e-10 * Math.hypot(f.coefficient.re, f.coefficient.im) })) ?? fitted[n]?.forms ?? [];
@@ -83,30 +83,12 @@ function disagreement(setup: Setup, n: number, t: SymbolicVerdicts['terms'][numb
   const name = setup.list.terms[n].name;
   if (unknown !== undefined && unknown !== n)
     return `What is left of ${name} is open: ${setup.list.terms[unknown].name}, nested in it, could not be subtracted.`;
+  if (unknown === n && t.overallDegree > STEEPEST_REMAINDER)
+    return `What is left of ${name} may grow up to L^${t.overallDegree}, too steeply for a fit in double precision: no counterterm is offered.`;
   if (unknown === n)
     return `What is left of ${name} after subtracting everything nested is neither a polynomial in p, k, E nor one of the kernels: no counterterm is offered.`;
   const said = t.verdict === 'converges' ? 'it converges' : `it grows as L^${t.power}${t.log ? ` ln^${t.log} L` : ''}`;
   return `Whether ${name} diverges is open: power counting says that ${said}, the numbers on a ladder of cutoffs do not bear it out.`;
-}
-
-function ladderWishes(setup: Setup, symbolic: SymbolicVerdicts, dense: readonly boolean[]): LadderWishes {
-  const degree = Math.max(-1, ...symbolic.terms.map((t, n) => (dense[n] ? t.overallDegree : -1)));
-  const steepest = Math.max(0, ...symbolic.terms.map((t, n) => (dense[n] ? (t.power ?? 0) : 0)));
-  if (degree < 0) {
-    const some = dense.some(Boolean);
-    return { rungs: some ? 9 : 6, energies: 1, momenta: 2, pointsPerPanel: some ? 12 : 16, powers: [], steepest };
-  }
-  const powers = Array.from({ length: Math.floor(degree) + 1 }, (_, a) => a)
-    .filter(a => setup.kinematics.signed || a % 2 === 0)
-    .map(a => a + partialWave(setup.spec.wave));
-  return {
-    rungs: 11 + Math.ceil(degree / 2),
-    energies: 1 + Math.floor(degree / 2),
-    momenta: 2 + Math.floor(degree / 2),
-    pointsPerPanel: steepest > 3 ? 16 : 12,
-    powers,
-    steepest,
-  };
 }
 
 interface BareTerm {
@@ -137,7 +119,6 @@ function fitDense(
   symbolic: SymbolicVerdicts,
   ladder: Ladder,
   bare: readonly BareTerm[],
-  dense: readonly boolean[],
   exact: ReturnType<typeof contactOverall> | readonly [],
   fitted: (FittedOverall | null)[],
   scale: number,
@@ -147,17 +128,19 @@ function fitDense(
   for (let n = 0; n < symbolic.terms.length && !shouldStop(); n++) {
     run.step(n);
     const t = symbolic.terms[n];
-    const wanted = dense[n] && t.overallDegree >= 0 && t.verdict === 'diverges';
-    if (wanted)
-      fitted[n] = fitOverall(
-        setup,
-        run,
-        n,
-        t.overallDegree,
-        scale,
-        Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)),
-        bare[n].sizes,
-      );
+    if (leavesSomething(t))
+      fitted[n] =
+        t.overallDegree > STEEPEST_REMAINDER
+          ? { forms: [], local: false }
+          : fitOverall(
+              setup,
+              run,
+              n,
+              t.overallDegree,
+              scale,
+              Math.max(1, setup.list.terms[n].factors - 1 - (setup.kinematics.dimension === 2 ? 0 : 1)),
+              bare[n].sizes,
+            );
     const forms: readonly Pick<FittedForm, 'form' | 'power' | 'log' | 'coefficient'>[] = exact[n]?.forms ?? fitted[n]?.forms ?? [];
     if (!forms.length) continue;
     const vertices = forms.map(f => ('interaction' in f.form ? setup.vertices[f.form.interaction] : formVertex(f.form)));
@@ -176,27 +159,16 @@ function denseStrengths(
   symbolic: SymbolicVerdicts,
   ladder: Ladder,
   bare: readonly BareTerm[],
-  dense: readonly boolean[],
   atUnit: readonly (FittedOverall | null)[],
   shouldStop: () => boolean,
 ): StrengthLaw[] {
   const wanted = setup.list.terms.flatMap((_, n) =>
-    dense[n] ? minimalCounterterms(setup, n).map(c => ({ n, scale: c.spec.scheme.at })) : [],
+    needsNumbers(symbolic.terms[n]) ? minimalCounterterms(setup, n).map(c => ({ n, scale: c.spec.scheme.at })) : [],
   );
   return [...new Set(wanted.map(w => w.scale))].flatMap(scale => {
     const fitted = [...atUnit];
     if (scale !== 1)
-      fitDense(
-        setup,
-        symbolic,
-        ladder,
-        bare,
-        dense,
-        symbolic.contacts ? contactOverall(symbolic.contacts, scale) : [],
-        fitted,
-        scale,
-        shouldStop,
-      );
+      fitDense(setup, symbolic, ladder, bare, symbolic.contacts ? contactOverall(symbolic.contacts, scale) : [], fitted, scale, shouldStop);
     return [...new Set(wanted.filter(w => w.scale === scale).map(w => w.n))].flatMap(n =>
       fitted[n] ? fittedStrengths(setup, n, fitted[n], scale) : [],
     );

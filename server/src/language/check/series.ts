@@ -1,10 +1,7 @@
 import type { CutoffSpec, SeriesSpec } from '../../core/model/spec';
-import type { Defaults, Overrides } from '../document';
+import { highestOrder, type Defaults, type Overrides } from '../document';
 import { keyword, statementsOf, wholeBetween, type Model } from './model';
 import { onShellPoints, type Kinematics } from './points';
-
-/** The highest order that this version evaluates. */
-export const highestOrder = 8;
 
 /**
  * The order and the on-shell points of the series. Where the model gives no points, one stands for all: a twentieth of the cutoff.
