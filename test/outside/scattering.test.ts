@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { boundStates } from '../../server/src/core/scattering/bound-states';
+import { lowEnergy } from '../../server/src/core/scattering/low-energy';
 import { convergenceAt, fullAmplitude, potentialParts } from '../../server/src/core/scattering/solution';
 import { CutoffGrid, seriesAtCutoff } from '../../server/src/core/series/amplitudes';
 import { setUp } from '../../server/src/core/series/setup';
@@ -16,7 +17,7 @@ function at(
   p: number,
   cutoff: number,
   more: Partial<ModelSpec> = {},
-  dimension: 1 | 3 = 3,
+  dimension: 1 | 2 | 3 = 3,
 ): CutoffGrid {
   const base = modelIn(dimension, dimension === 1 ? 'full' : 0);
   const spec: ModelSpec = {
@@ -55,7 +56,42 @@ describe('closed amplitudes from the literature', () => {
   );
 });
 
+// Common practice: the bubble of a contact in closed form.
+describe('second order of a contact', () => {
+  const bubble = (dimension: 2 | 3, p: number, cutoff: number) => orders(at('1', 'pk', p, cutoff, {}, dimension), p).bare[0][1].forward;
+  it.each(amplitudes.contactSecondOrder.values as [number, number, { re: number; im: number }][])(
+    'dimension 3, p = %f, cutoff %f',
+    (p, cutoff, T) => expect(off(bubble(3, p, cutoff), T)).toBeLessThan(1e-12),
+  );
+  it.each(amplitudes.planeContactSecondOrder.values as [number, number, { re: number; im: number }][])(
+    'dimension 2, p = %f, cutoff %f',
+    (p, cutoff, T) => expect(off(bubble(2, p, cutoff), T)).toBeLessThan(1e-12),
+  );
+});
+
+// 1/(1 + (μc/p)²): any text on quantum mechanics. A sharp cutoff leaves 2μ²c/(πΛ) beside μc.
+it('a delta on a line lets through what it should', () => {
+  const [c, p, cutoff] = [0.7, 0.9, 4e4];
+  const { transmission, reflection } = full(at(`${c}*delta(x)`, 'x', p, cutoff, { mu: 1 }, 1), p);
+  expect(transmission).toBeCloseTo(1 / (1 + (c / p) ** 2), 4);
+  expect(transmission! + reflection!).toBeCloseTo(1, 13);
+});
+
 describe('potentials', () => {
+  // An edge in position leaves errors of order 1/Λ behind a sharp cutoff.
+  it.each([
+    ...potentials.squareWell.map(
+      ({ depth, scatteringLength }) => ['square well', depth, `${-depth}*step(1 - r)`, 60, scatteringLength, 1e-3] as const,
+    ),
+    ...potentials.exponential.map(
+      ({ depth, scatteringLength }) => ['exponential', depth, `${-depth}*exp(-r)`, 300, scatteringLength, 1e-7] as const,
+    ),
+  ])('scattering length of the %s of depth %f', (_, __, kernel, cutoff, exact, tolerance) => {
+    const { setup } = at(kernel, 'r', 0.2, cutoff);
+    const found = lowEnergy(setup, cutoff, potentialParts(at(kernel, 'r', 0.2, cutoff), []), 0.02)!;
+    expect(Math.abs(found.scatteringLength / exact - 1)).toBeLessThan(tolerance);
+  });
+
   it.each(potentials.squareWell)('square well of depth $depth', ({ depth, phaseShifts }) => {
     for (const [p, delta] of phaseShifts) {
       // An edge in position leaves errors of order 1/Λ³ behind a sharp cutoff.
