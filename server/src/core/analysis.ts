@@ -9,7 +9,7 @@ import { cost } from './series/cost';
 import { byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation } from './series/evaluation';
 import { ladderWishes } from './series/ladder-wishes';
 import { onShellPoints } from './series/points';
-import { setUp, type Setup } from './series/setup';
+import { oscillationLength, setUp, type Setup } from './series/setup';
 import { cancelledBy, declaredContacts, renormalisedConverges, statuses } from './series/statuses';
 import { fullUltraviolet, symbolicUltraviolet } from './series/ultraviolet';
 import { symbolicVerdicts } from './series/verdicts';
@@ -44,6 +44,15 @@ export function symbolicResults(spec: ModelSpec): ModelResults {
   };
 }
 
+/** About a gigabyte. */
+const MOST_HELD = 1.5e8;
+
+/** What makes a model smaller. */
+const remedy = ({ vertices }: Setup): string =>
+  oscillationLength(vertices) > 0
+    ? 'Edges of a potential and deltas away from the origin oscillate up to the highest cutoff: round the edges off, bring them nearer to the origin, or take a sharp cutoff and a shorter scan.'
+    : 'A lower order, fewer cutoffs or fewer momenta make it smaller.';
+
 /** Everything about a model: verdicts with forms and their confirmation, amplitudes, counterterm strengths, convergence, expectations. */
 export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults {
   const { setup, remarks: lowering } = setUp(spec);
@@ -56,9 +65,13 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   const declared = declaredContacts(setup, symbolic);
   const asked = onShellPoints(setup);
   const remarks: Remark[] = [...lowering, ...symbolic.remarks, ...declared.remarks, ...asked.remarks];
-  const needed = cost(setup, ladderWishes(setup, symbolic));
-  if (needed > options.budget) {
-    const message = `The numbers of this model would take about ${needed.toPrecision(2)} evaluations and ${options.budget.toPrecision(2)} are allowed: a lower order, fewer cutoffs or fewer momenta make it smaller.`;
+  const { evaluations, held } = cost(setup, ladderWishes(setup, symbolic));
+  if (evaluations > options.budget || held > MOST_HELD) {
+    const needs =
+      evaluations > options.budget
+        ? `take about ${evaluations.toPrecision(2)} evaluations and ${options.budget.toPrecision(2)} are allowed`
+        : `keep ${held.toPrecision(2)} numbers of kernels at once and ${MOST_HELD.toPrecision(1)} are allowed`;
+    const message = `The numbers of this model would ${needs}. ${remedy(setup)}`;
     const results = symbolicResults(spec);
     // What has not been confirmed by numbers is no verdict.
     const terms = results.terms.map(t => ({ ...t, ultraviolet: undecided(t.ultraviolet), status: null }));

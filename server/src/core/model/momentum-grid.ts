@@ -41,6 +41,12 @@ export interface GridWishes {
   readonly growth: number;
 }
 
+/** How many nodes `momentumGrid` would have. */
+export function nodeCount(kinematics: Kinematics, regulator: Regulator, cutoff: number, wishes: GridWishes): number {
+  const panels = breakpoints(cutoff * regulator.reach(wishes.growth), cutoff, regulator, wishes).length - 1;
+  return panels * wishes.pointsPerPanel * (kinematics.signed ? 2 : 1);
+}
+
 export function momentumGrid(kinematics: Kinematics, regulator: Regulator, cutoff: number, wishes: GridWishes): MomentumGrid {
   const high = cutoff * regulator.reach(wishes.growth);
   const breaks = breakpoints(high, cutoff, regulator, wishes);
@@ -106,7 +112,7 @@ function breakpoints(
 }
 
 /** About so many panels narrow towards singular momenta, on either side of them. */
-export const GRADED = 24;
+const GRADED = 24;
 
 /** p and what lies 1/4, 1/16, … of it on either side. */
 function gradedTo(p: number, levels: number): number[] {

@@ -1,5 +1,5 @@
 import type { Complex } from '../algebra/expression';
-import { momentumGrid } from '../model/momentum-grid';
+import { momentumGrid, type GridWishes } from '../model/momentum-grid';
 import { gridWishes } from './amplitudes';
 import { energyAway } from './contact-divergences';
 import { GridKernels } from './dense-words';
@@ -62,8 +62,8 @@ export interface LadderWishes {
 }
 
 /**
- * Start of the ladder in units of the largest soft momentum; a power law has to be visible through its corrections. Edges of a potential
- * oscillate in momentum up to the highest cutoff, and the grid has to follow.
+ * Start of the ladder in units of the largest soft momentum; a power law has to be visible through its corrections. Edges of a potential and
+ * deltas away from the origin oscillate in momentum up to the highest cutoff, and the grid has to follow.
  */
 const START = { smooth: 50, edged: 15 };
 /** Ratio of successive cutoffs: no simple number, so that no oscillation is met always at the same phase. */
@@ -72,27 +72,33 @@ const RATIO = { gentle: 1.5422107, steep: 1.2713049 };
 /** The cutoffs of the ladder, lowest first. */
 export function ladderCutoffs(setup: Setup, { rungs, steepest }: Pick<LadderWishes, 'rungs' | 'steepest'>): number[] {
   const length = oscillationLength(setup.vertices);
-  const edged = oscillationLength(setup.vertices.filter(v => !v.finiteRank)) > 0;
+  // Only kernels that act on functions of momentum make a fine grid costly.
+  const edged = length > 0 && setup.vertices.some(v => !v.finiteRank);
   const start = START[edged ? 'edged' : 'smooth'] * Math.max(softMomentum(setup), length > 0 ? 2 / length : 0);
   const ratio = RATIO[edged || steepest > 3 ? 'steep' : 'gentle'];
   return Array.from({ length: rungs }, (_, j) => start * ratio ** j);
 }
 
+const ladderMomenta = (setup: Setup, { momenta }: Pick<LadderWishes, 'momenta'>): number[] =>
+  Array.from({ length: momenta }, (_, j) => softMomentum(setup) * (0.61803 + 0.41421 * j));
+
+/** What the grid of a rung has to resolve: off shell there is no pole, but what oscillates does so everywhere. */
+export function rungWishes(setup: Setup, cutoff: number, wishes: Pick<LadderWishes, 'momenta' | 'pointsPerPanel'>): GridWishes {
+  const all = gridWishes(setup, cutoff, ladderMomenta(setup, wishes), wishes.pointsPerPanel);
+  return oscillationLength(setup.vertices) > 0
+    ? all
+    : { ...all, external: 0, edgeWidth: Math.min(Infinity, ...kernelScales(setup.vertices)) };
+}
+
 export function buildLadder(setup: Setup, wishes: LadderWishes): Ladder {
   const { kinematics, regulator, list, vertices } = setup;
-  const scales = kernelScales(vertices);
-  const length = oscillationLength(vertices);
   const soft = softMomentum(setup);
   const cutoffs = ladderCutoffs(setup, wishes);
-  const momenta = Array.from({ length: wishes.momenta }, (_, j) => soft * (0.61803 + 0.41421 * j));
+  const momenta = ladderMomenta(setup, wishes);
   const externals = momenta.flatMap(k => externalsAt(kinematics, k));
   const energies = Array.from({ length: wishes.energies }, (_, j) => energyAway(kinematics, soft, 0.7310585786 + 0.6 * j));
   const rungs = cutoffs.map(cutoff => {
-    const below = { external: 0, edgeWidth: Math.min(Infinity, ...scales) };
-    const grid = momentumGrid(kinematics, regulator, cutoff, {
-      ...gridWishes(setup, cutoff, momenta, wishes.pointsPerPanel),
-      ...(length > 0 ? {} : below),
-    });
+    const grid = momentumGrid(kinematics, regulator, cutoff, rungWishes(setup, cutoff, wishes));
     return { cutoff, grid, kernels: new GridKernels(grid) };
   });
   return {

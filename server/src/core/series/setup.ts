@@ -129,14 +129,11 @@ export function softMomentum({ momentum, vertices }: Setup): number {
   return Math.max(momentum, ...kernelScales(vertices).filter(s => s < 1e3 * momentum));
 }
 
-/**
- * Largest length of an oscillation e^(i phase k) that a grid has to follow; 0 where there is none. Where two deltas meet in a loop both count;
- * other kernels fall off besides.
- */
+/** Largest length of an oscillation e^(i phase k) of a kernel; 0 where there is none. Two of them meet in a loop. */
 export function oscillationLength(vertices: readonly Vertex[]): number {
   const lengths = vertices
     .flatMap(v => localParts(v.element.shape))
-    .flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])].map(t => Math.abs(t.phase) * (shape.contact ? 2 : 1)));
+    .flatMap(shape => [...(shape.tail ?? []), ...(shape.backwardTail ?? [])].map(t => Math.abs(t.phase)));
   return Math.max(0, ...lengths);
 }
 

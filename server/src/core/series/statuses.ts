@@ -63,14 +63,18 @@ export function cancelledBy(setup: Setup, n: number): string[] {
 }
 
 /** A short ladder, low enough for what is left to stand out from the rounding of what has been taken away. */
+export function statusCutoffs(setup: Setup): number[] {
+  const soft = Math.max(softMomentum(setup), ...setup.counterterms.map(c => c.spec.scheme.at));
+  return CUTOFFS.map(x => x * soft);
+}
+
 const CUTOFFS = Array.from({ length: 8 }, (_, j) => 25 * 1.2713049 ** j);
 
 /** For each monomial: does its renormalised on-shell amplitude converge as the cutoff is lifted, as far as numbers tell? */
 export function renormalisedConverges(setup: Setup, strengths: readonly StrengthLaw[], shouldStop: () => boolean): boolean[] {
   const p = setup.momentum * 0.8660254;
   const point = { p, E: setup.kinematics.energy(p) };
-  const soft = Math.max(softMomentum(setup), ...setup.counterterms.map(c => c.spec.scheme.at));
-  const cutoffs = CUTOFFS.map(x => x * soft);
+  const cutoffs = statusCutoffs(setup);
   const runs = cutoffs.map(L => (shouldStop() ? null : seriesAtCutoff(new CutoffGrid(setup, L, [p], 16), [point], strengths)));
   if (runs.some(r => r === null)) return setup.list.terms.map(() => false);
   return setup.list.terms.map((_, n) => {
