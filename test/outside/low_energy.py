@@ -102,7 +102,7 @@ for depth in [mp.mpf("0.5"), mp.mpf(2), mp.mpf(4)]:
 
 # Binding energies κ². sech²: (n - j)² (Landau, Lifshitz, Quantum Mechanics, §23), odd j in space; exponential: J_2κ(2 sqrt g) = 0.
 def roots(f, low, high, count=400):
-    xs = [mp.mpf(low) + (mp.mpf(high) - low) * j / count for j in range(count + 1)]
+    xs = [mp.mpf(low) + (mp.mpf(high) - mp.mpf(low)) * j / count for j in range(count + 1)]
     return [mp.findroot(f, (a, b), solver="anderson") for a, b in zip(xs, xs[1:]) if mp.sign(f(a)) != mp.sign(f(b))]
 
 
@@ -121,7 +121,7 @@ def confirmed(v, kappas, start, reach):
 n = mp.mpf("3.4")
 strength = number(n * (n + 1))
 binding = {
-    "exponential": {"depth": 20, "energies": confirmed(lambda r: -20 * np.exp(-r), roots(lambda x: mp.besselj(2 * x, 2 * mp.sqrt(20)), "0.05", 4.4), (0.0, [0.0, 1.0]), 9.0)},
+    "exponential": {"depth": 20, "energies": confirmed(lambda r: -20 * np.exp(-r), roots(lambda x: mp.besselj(2 * x, 2 * mp.sqrt(20)), "0.05", 4.4), (0.0, [0.0, 1.0]), 30.0)},
     "sech^2 in space": {"strength": strength, "energies": confirmed(sech(strength), [n - 1, n - 3], (0.0, [0.0, 1.0]), 12.0)},
     "sech^2, even": {"strength": strength, "energies": confirmed(sech(strength), [n, n - 2], (0.0, [1.0, 0.0]), 9.0)},
     "sech^2, odd": {"strength": strength, "energies": confirmed(sech(strength), [n - 1, n - 3], (0.0, [0.0, 1.0]), 12.0)},
