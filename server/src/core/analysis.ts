@@ -1,10 +1,8 @@
 import { judge } from './expectations';
 import type { ModelSpec } from './model/spec';
-import type { ConvergenceResult, ModelResults, ObservablesResult, Remark, SumResult, TermResult, Ultraviolet } from './results';
-import { boundStates } from './scattering/bound-states';
-import { convergenceAt, fullAmplitude, potentialParts } from './scattering/solution';
-import { lowEnergy } from './scattering/low-energy';
-import { CutoffGrid, named, type OnShellPoint } from './series/amplitudes';
+import type { ModelResults, Remark, SumResult, TermResult, Ultraviolet } from './results';
+import { beyondTheSeries, type BeyondTheSeries } from './scattering/beyond-the-series';
+import { named, type OnShellPoint } from './series/amplitudes';
 import { cost } from './series/cost';
 import { byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation } from './series/evaluation';
 import { ladderWishes } from './series/ladder-wishes';
@@ -108,7 +106,13 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
     return scan ? { ...one, scan } : one;
   });
   const infinite = symbolic.terms.some(t => t.tooSoft);
-  const solution = solve(setup, infinite ? null : evaluation, infinite ? [] : points.slice(0, asked.reported), options, stop);
+  const solution = beyondTheSeries(
+    setup,
+    infinite ? null : evaluation,
+    infinite ? [] : points.slice(0, asked.reported),
+    options.full,
+    stop,
+  );
   const expectations = judge(spec.expectations, {
     terms: results,
     convergenceAt: point => solution.convergence(asked.find(point)),
@@ -167,12 +171,7 @@ function scanOf(evaluation: Evaluation, n: number): TermResult['scan'] | null {
   };
 }
 
-function sums(
-  setup: Setup,
-  evaluation: Evaluation,
-  points: readonly OnShellPoint[],
-  full: ReturnType<typeof solve>['full'] | null,
-): SumResult[] {
+function sums(setup: Setup, evaluation: Evaluation, points: readonly OnShellPoint[], full: BeyondTheSeries['full'] | null): SumResult[] {
   return points.flatMap((point, j): SumResult[] => {
     const { orders, values } = byOrder(setup, evaluation.at.renormalised[j]);
     if (values.some(v => !Number.isFinite(v.re) || !Number.isFinite(v.im))) return [];
@@ -187,54 +186,6 @@ function sums(
     const scanned = evaluation.scan.length ? { drift: driftOf(setup, evaluation, j) } : {};
     return [{ ...named(point), orders, byOrder: values, ...beyond, ...scanned }];
   });
-}
-
-/** The full solution and the eigenvalues, each computed when first asked for. */
-function solve(setup: Setup, evaluation: Evaluation | null, points: readonly OnShellPoint[], options: AnalysisOptions, stop: () => void) {
-  const { spec } = setup;
-  const momenta = [...points, ...(evaluation?.points ?? [])].map(p => p.p);
-  const wanted = options.full || spec.expectations.some(e => e.kind === 'observable');
-  // Eigenvalues alone are wanted to fewer digits.
-  const grid = momenta.length ? new CutoffGrid(setup, spec.cutoff.value, momenta, wanted ? 12 : 8) : null;
-  const parts = grid && evaluation ? potentialParts(grid, evaluation.at.strengths) : [];
-  const memo = <T>(compute: (point: OnShellPoint) => T) => {
-    const known = new Map<OnShellPoint, T>();
-    return (point: OnShellPoint | null): T | null => {
-      if (!point || !grid) return null;
-      if (!known.has(point)) {
-        stop();
-        known.set(point, compute(point));
-      }
-      return known.get(point)!;
-    };
-  };
-  const convergence = memo((point): ConvergenceResult => convergenceAt(grid!, point));
-  const full = memo(point => {
-    const solved = fullAmplitude(grid!, parts, point);
-    return Number.isFinite(solved.forward.re) ? { ...solved, p: point.p } : null;
-  });
-  return { wanted, convergence, full, observables: wanted && grid ? observablesOf(setup, parts, stop) : null };
-}
-
-function observablesOf(setup: Setup, parts: ReturnType<typeof potentialParts>, stop: () => void): ObservablesResult | null {
-  const cutoff = setup.spec.cutoff.value;
-  const low = lowEnergy(setup, cutoff, parts, Math.min(setup.momentum, cutoff / 10) / 20);
-  const real = parts.every(p => p.vertex.element.real && p.strength.im === 0);
-  const bound = real && setup.kinematics.threshold > -Infinity ? boundStates(setup, cutoff, parts, stop) : null;
-  if (!low && !bound) return null;
-  const finite = low && Number.isFinite(low.scatteringLength) && Number.isFinite(low.scatteringLengthError);
-  const range = low && low.effectiveRange !== null && Number.isFinite(low.effectiveRange) && Number.isFinite(low.effectiveRangeError);
-  return {
-    ...(finite ? { scattering_length: low.scatteringLength } : {}),
-    ...(range ? { effective_range: low.effectiveRange } : {}),
-    ...(bound ? { binding_energies: bound.map(b => b.energy) } : {}),
-    definition: low?.definition ?? 'binding energies from the threshold',
-    uncertainties: {
-      ...(finite ? { scattering_length: low.scatteringLengthError } : {}),
-      ...(range ? { effective_range: low.effectiveRangeError } : {}),
-      ...(bound ? { binding_energies: bound.map(b => b.error) } : {}),
-    },
-  };
 }
 
 function nothing(spec: ModelSpec, remarks: readonly Remark[]): ModelResults {

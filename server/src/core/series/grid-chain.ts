@@ -1,8 +1,9 @@
 import type { Complex } from '../algebra/expression';
 import type { Monomial } from '../model/spec';
 import type { RankTerm, Vertex } from '../model/vertex';
+import { contactStates, endOn, stateAt, stateKey, type ContactState } from './contact-states';
 import { addMultiple, DenseOperator, type Column, type GridKernels } from './dense-words';
-import type { Ending, LoopWeights } from './loop-weights';
+import type { LoopWeights } from './loop-weights';
 import { difference, type MonomialList } from './monomials';
 
 /** A vertex times a number. */
@@ -10,24 +11,6 @@ export interface ScaledVertex {
   readonly vertex: Vertex;
   readonly strength: Complex;
 }
-
-/** What a contact leaves on its left: k^power e^(i phase k); on its right it takes the moment with the conjugate. */
-export interface ContactState {
-  readonly power: number;
-  readonly phase: number;
-}
-
-/** The states of the contacts among these vertices. */
-export function contactStates(vertices: readonly Vertex[]): ContactState[] {
-  return vertices
-    .flatMap(v => v.finiteRank ?? [])
-    .flatMap(({ a, b, phase }) => [
-      { power: a, phase },
-      { power: b, phase },
-    ]);
-}
-
-const stateKey = ({ power, phase }: ContactState): string => `${power}/${phase}`;
 
 /** A vertex with the part of a monomial that it stands for: one factor for an interaction, all of it for a counterterm. */
 interface Placed<V> {
@@ -307,19 +290,6 @@ export class GridChain {
     );
     return result;
   }
-}
-
-function stateAt({ power, phase }: ContactState, k: Float64Array): Column {
-  const size = k.map(x => x ** power);
-  if (phase === 0) return { re: size, im: null };
-  return { re: size.map((v, j) => v * Math.cos(phase * k[j])), im: size.map((v, j) => v * Math.sin(phase * k[j])) };
-}
-
-/** (state)* at the external momentum, as a contact meets it. */
-function endOn(column: Ending, { power, phase }: ContactState): Complex {
-  if (column.kind === 'power') return { re: column.n === power && phase === 0 ? 1 : 0, im: 0 };
-  if (phase === 0) return { re: column.contacts ? column.k ** power : 0, im: 0 };
-  return { re: column.k ** power * Math.cos(phase * column.k), im: -(column.k ** power) * Math.sin(phase * column.k) };
 }
 
 const isPart = (inner: Monomial, outer: Monomial): boolean => inner.every((m, i) => m <= outer[i]);
