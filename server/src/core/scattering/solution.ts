@@ -2,6 +2,7 @@ import type { Complex } from '../algebra/expression';
 import type { ConvergenceResult } from '../results';
 import { named, nearest, onShellWeights, type CutoffGrid, type OnShellPoint, type Strength } from '../series/amplitudes';
 import type { ScaledVertex } from '../series/grid-chain';
+import { finiteRankStandingWave } from './finite-rank';
 import { amplitudeFromStandingWave, standingWave } from './full';
 import { potentialMatrix } from './potential';
 import { weinbergEigenvalues } from './weinberg';
@@ -34,7 +35,7 @@ export interface FullAmplitude {
 /** Solves T = V + V G T. Every wave but dimension 1 `full`: tan δ = -ρK; there t = 1 - 2iρT(p,p), r = -2iρT(-p,p). */
 export function fullAmplitude(at: CutoffGrid, parts: readonly ScaledVertex[], point: OnShellPoint): FullAmplitude {
   const problem = onShellWeights(at, point);
-  const k = standingWave(potentialMatrix(at.kernels, parts, problem), problem);
+  const k = finiteRankStandingWave(parts, problem) ?? standingWave(potentialMatrix(at.kernels, parts, problem), problem);
   const t = amplitudeFromStandingWave(k, problem.density);
   const column = nearest(problem.externals, point.p);
   const leg = at.setup.regulator.leg(point.p / at.cutoff) ** 2;
