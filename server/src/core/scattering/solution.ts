@@ -2,10 +2,10 @@ import type { Complex } from '../algebra/expression';
 import type { ConvergenceResult } from '../results';
 import { named, nearest, onShellWeights, type CutoffGrid, type OnShellPoint, type Strength } from '../series/amplitudes';
 import type { ScaledVertex } from '../series/grid-chain';
-import { finiteRankStandingWave } from './finite-rank';
+import { finiteRankLoop, finiteRankStandingWave } from './finite-rank';
 import { amplitudeFromStandingWave, standingWave } from './full';
 import { potentialMatrix } from './potential';
-import { weinbergEigenvalues } from './weinberg';
+import { eigenvaluesOfLoop, outgoing, weinbergEigenvalues } from './weinberg';
 
 const ONE: Complex = { re: 1, im: 0 };
 
@@ -64,7 +64,9 @@ export function fullAmplitude(at: CutoffGrid, parts: readonly ScaledVertex[], po
 /** Weinberg's eigenvalues of the interactions at one momentum and at this grid's cutoff. */
 export function convergenceAt(at: CutoffGrid, point: OnShellPoint): ConvergenceResult {
   const problem = onShellWeights(at, point);
-  const { values, residual } = weinbergEigenvalues(potentialMatrix(at.kernels, potentialParts(at, []), problem), problem);
+  const parts = potentialParts(at, []);
+  const loop = finiteRankLoop(parts, problem, outgoing(problem));
+  const { values, residual } = loop ? eigenvaluesOfLoop(loop) : weinbergEigenvalues(potentialMatrix(at.kernels, parts, problem), problem);
   const largest = values[0] ?? { re: 0, im: 0 };
   const size = Math.hypot(largest.re, largest.im);
   const decided = Math.abs(size - 1) > residual && Number.isFinite(size);

@@ -14,9 +14,8 @@ const REPORTED = 6;
  */
 export function weinbergEigenvalues(potential: PotentialMatrix, problem: LoopWeights): { values: Complex[]; residual: number } {
   const { size, re, im } = potential;
-  const nodes = size - problem.density.length;
   const gRe = problem.g.re;
-  const gIm = Float64Array.from({ length: size }, (_, j) => (j < nodes ? 0 : -problem.density[j - nodes]));
+  const gIm = outgoing(problem);
   const x = { re: new Float64Array(size), im: new Float64Array(size) };
   const found = largestEigenvalues(
     (input, output) => {
@@ -47,6 +46,32 @@ export function weinbergEigenvalues(potential: PotentialMatrix, problem: LoopWei
     REPORTED,
     1e-6,
   );
-  const largest = Math.hypot(found.values[0]?.re ?? 0, found.values[0]?.im ?? 0);
-  return { values: found.values.filter(v => Math.hypot(v.re, v.im) > 1e-8 * largest), residual: found.residual };
+  return withoutZeros(found);
+}
+
+/** The imaginary part of the propagator on the loop points: -ρ on shell. */
+export function outgoing({ g, density }: LoopWeights): Float64Array {
+  const nodes = g.re.length - density.length;
+  return g.re.map((_, j) => (j < nodes ? 0 : -density[j - nodes]));
+}
+
+/** The same from a small matrix that has these eigenvalues. */
+export function eigenvaluesOfLoop(matrix: readonly (readonly Complex[])[]): { values: Complex[]; residual: number } {
+  const found = largestEigenvalues(
+    (x, y) =>
+      matrix.forEach((row, r) => {
+        y.re[r] = row.reduce((sum, c, k) => sum + c.re * x.re[k] - c.im * x.im[k], 0);
+        y.im[r] = row.reduce((sum, c, k) => sum + c.re * x.im[k] + c.im * x.re[k], 0);
+      }),
+    matrix.length,
+    matrix.length,
+    REPORTED,
+    1e-6,
+  );
+  return withoutZeros(found);
+}
+
+function withoutZeros({ values, residual }: { values: Complex[]; residual: number }): { values: Complex[]; residual: number } {
+  const largest = Math.hypot(values[0]?.re ?? 0, values[0]?.im ?? 0);
+  return { values: values.filter(v => Math.hypot(v.re, v.im) > 1e-8 * largest), residual };
 }
