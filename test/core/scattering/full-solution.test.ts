@@ -52,7 +52,7 @@ describe('the full solution and the series', () => {
         expect(off(product, T[0])).toBeLessThan(1e-10);
         expect(converges).toBe(Math.hypot(eta!.re, eta!.im) < 1);
       }),
-      { numRuns: 15 },
+      { numRuns: 8 },
     );
   });
 });
