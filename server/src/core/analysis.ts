@@ -1,7 +1,7 @@
 import { judge } from './expectations';
 import type { ModelSpec } from './model/spec';
 import type { ModelResults, Remark, SumResult, TermResult, Ultraviolet } from './results';
-import { beyondTheSeries, type BeyondTheSeries } from './scattering/beyond-the-series';
+import { beyondTheSeries, wantsFull, type BeyondTheSeries } from './scattering/beyond-the-series';
 import { named, type OnShellPoint } from './series/amplitudes';
 import { cost } from './series/cost';
 import { byOrder, countertermResults, couplingResults, driftOf, evaluateSeries, valuesOf, type Evaluation } from './series/evaluation';
@@ -63,7 +63,7 @@ export function analyse(spec: ModelSpec, options: AnalysisOptions): ModelResults
   const declared = declaredContacts(setup, symbolic);
   const asked = onShellPoints(setup);
   const remarks: Remark[] = [...lowering, ...symbolic.remarks, ...declared.remarks, ...asked.remarks];
-  const { evaluations, held } = cost(setup, ladderWishes(setup, symbolic));
+  const { evaluations, held } = cost(setup, ladderWishes(setup, symbolic), wantsFull(spec, options.full));
   if (evaluations > options.budget || held > MOST_HELD) {
     const needs =
       evaluations > options.budget

@@ -1,3 +1,4 @@
+import type { ModelSpec } from '../model/spec';
 import type { ConvergenceResult, ObservablesResult } from '../results';
 import { CutoffGrid, type OnShellPoint } from '../series/amplitudes';
 import type { Evaluation } from '../series/evaluation';
@@ -15,6 +16,10 @@ export interface BeyondTheSeries {
   readonly observables: ObservablesResult | null;
 }
 
+/** Whether anything asks for the full solution. */
+export const wantsFull = ({ expectations }: ModelSpec, alsoFull: boolean): boolean =>
+  alsoFull || expectations.some(e => e.kind === 'observable');
+
 /** The full solution and the eigenvalues, each computed when first asked for. `alsoFull`: also where no expectation needs it. */
 export function beyondTheSeries(
   setup: Setup,
@@ -25,7 +30,7 @@ export function beyondTheSeries(
 ): BeyondTheSeries {
   const { spec } = setup;
   const momenta = [...points, ...(evaluation?.points ?? [])].map(p => p.p);
-  const wanted = alsoFull || spec.expectations.some(e => e.kind === 'observable');
+  const wanted = wantsFull(spec, alsoFull);
   // Eigenvalues alone are wanted to fewer digits.
   const grid = momenta.length ? new CutoffGrid(setup, spec.cutoff.value, momenta, wanted ? 12 : 8) : null;
   const parts = grid && evaluation ? potentialParts(grid, evaluation.at.strengths) : [];

@@ -12,7 +12,8 @@ export interface Cost {
   readonly held: number;
 }
 
-export function cost(setup: Setup, wishes: LadderWishes): Cost {
+/** `full`: the solution beyond the series is asked for, whose bound states are looked for at 160 energies. */
+export function cost(setup: Setup, wishes: LadderWishes, full: boolean): Cost {
   const { list, vertices, spec, counterterms, size, kinematics, regulator } = setup;
   const terms = list.terms.length;
   const links = list.terms.reduce((sum, t) => sum + t.exponents.reduce((product, n) => product * (n + 1), 1), 0);
@@ -36,7 +37,10 @@ export function cost(setup: Setup, wishes: LadderWishes): Cost {
   const kernels = dense * sum([...rungs, ...grids].map(n => n * (20 * n + 15_000)));
   const products = words * (columns * sum(rungs.map(n => n * n)) + points * (size + 1) * sum(grids.map(n => n * n)));
   const small = terms * (columns * (size + wishes.powers.length) * sum(rungs) + points * sum(grids)) + points * grids.length * links * 50;
-  return { evaluations: algebra + kernels + products + small, held: kept * sum(rungs.map(n => n * n)) };
+  const largest = nodeCount(kinematics, regulator, spec.cutoff.value, gridWishes(setup, spec.cutoff.value, asked, 8));
+  // Potentials of finite rank are solved by small matrices.
+  const solutions = full && dense > 0 ? (160 + 4 * (momenta + 8)) * (largest ** 3 / 3) : 0;
+  return { evaluations: algebra + kernels + products + small + solutions, held: kept * sum(rungs.map(n => n * n)) };
 }
 
 const sum = (values: readonly number[]): number => values.reduce((total, v) => total + v, 0);
