@@ -32,6 +32,18 @@ describe('a mistake has one message at its place, and the rest of the file is st
     ['a series to 0', model({ series: 'series to 0 at p = 0.5' }), '8:13 value', /at least 1/],
     ['a mass of 0', model({ mass: 'mass reduced 0' }), '4:16 value', /A mass is positive, and this is 0/],
     ['deep parentheses', model({ interaction: `interaction v(p, k) = c*${'('.repeat(9000)}1` }), null, /cut this one into several/],
+    [
+      'a subtraction point beyond a sharp cutoff',
+      model({ series: 'series to 2 at p = 0.5', more: 'counterterm z(p, k) = 1 cancels v^2 subtract at p = 20' }),
+      '9:55 value',
+      /lies beyond the sharp cutoff, 12/,
+    ],
+    [
+      'a kernel that is Hermitian only among momenta of one size',
+      model({ cutoff: 'cutoff L = 10 sharp', interaction: 'interaction v(p, k) = sqrt(1 - p^2)*sqrt(1 - k^2)/((1 + p^4)*(1 + k^4))' }),
+      '6:25 not-hermitian',
+      /is not Hermitian/,
+    ],
     ['a null byte', model({ interaction: 'interaction v(p, k) = c\u0000' }), '6:26 syntax', /has no meaning here/],
   ])('%s', (name, text, place, message) => {
     const run = tare(['check', fileOf(`${name.replace(/\W/g, '_')}.tare`, text + healthy)]);

@@ -78,8 +78,8 @@ describe('what it writes where', () => {
     expect(tare(['check', diverges], { FORCE_COLOR: '1' }).out).not.toContain('\u001b');
   });
 
-  // `script` gives a program a terminal.
-  it.skipIf(spawnSync('script', ['--version']).status !== 0)('colour on a terminal, unless NO_COLOR is set', () => {
+  // `script`, of Debian's essential packages, gives a program a terminal.
+  it('colour on a terminal, unless NO_COLOR is set', () => {
     const onTerminal = (env: Record<string, string>) =>
       spawnSync('script', ['-qec', `'${process.execPath}' '${program}' check '${diverges}'`, '/dev/null'], {
         encoding: 'utf8',

@@ -58,27 +58,32 @@ function finite(to: number | null, { terms }: Evidence): ExpectationResult {
 
 function observable(e: Extract<ExpectationSpec, { kind: 'observable' }>, evidence: Evidence): ExpectationResult {
   const { observables } = evidence;
-  const compare = (value: number | null | undefined): ExpectationResult =>
-    value === null || value === undefined || !Number.isFinite(value)
-      ? { text: '', holds: null, measured: 'not evaluated in this dimension and wave' }
-      : {
-          text: '',
-          holds: Math.abs(value - e.value) <= e.tolerance,
-          measured: value.toPrecision(6),
-          value,
-          wanted: e.value,
-          tolerance: e.tolerance,
-        };
+  const compare = (value: number | null | undefined, error = 0): ExpectationResult => {
+    if (value === null || value === undefined || !Number.isFinite(value))
+      return { text: '', holds: null, measured: 'not evaluated in this dimension and wave' };
+    const off = Math.abs(value - e.value);
+    return {
+      text: '',
+      // Within its own error of the edge of what is allowed it could be either.
+      holds: Math.abs(off - e.tolerance) < error ? null : off <= e.tolerance,
+      measured: value.toPrecision(6) + (error > 1e-6 * Math.abs(value) ? ` ± ${error.toPrecision(1)}` : ''),
+      value,
+      wanted: e.value,
+      tolerance: e.tolerance,
+    };
+  };
+  const errorOf = (name: string, at = 0): number | undefined => [observables?.uncertainties[name] ?? 0].flat()[at];
   switch (e.observable) {
     case 'scattering_length':
-      return compare(observables?.scattering_length);
+      return compare(observables?.scattering_length, errorOf('scattering_length'));
     case 'effective_range':
-      return compare(observables?.effective_range);
+      return compare(observables?.effective_range, errorOf('effective_range'));
     case 'binding_energy': {
       const energies = observables?.binding_energies;
       if (!energies) return compare(null);
       if (!energies.length) return { text: '', holds: false, measured: 'no bound state', wanted: e.value, tolerance: e.tolerance };
-      return compare(energies.reduce((x, y) => (Math.abs(y - e.value) < Math.abs(x - e.value) ? y : x)));
+      const nearest = energies.reduce((x, y) => (Math.abs(y - e.value) < Math.abs(x - e.value) ? y : x));
+      return compare(nearest, errorOf('binding_energies', energies.indexOf(nearest)));
     }
     default: {
       const full = e.point && evidence.fullAt(e.point);

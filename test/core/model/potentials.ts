@@ -1,27 +1,12 @@
 import { matrixElement } from '../../../server/src/core/model/matrix-element';
 import type { MatrixElement } from '../../../server/src/core/model/matrix-element';
-import type { KernelArguments, ModelSpec, Wave } from '../../../server/src/core/model/spec';
+import type { KernelArguments, ModelSpec } from '../../../server/src/core/model/spec';
 import { expr } from '../../support/expr';
+import { specOf } from '../../support/spec';
 
 /** A model of nothing but a dimension and a wave: `full`, `even`, `odd`, or the angular momentum. */
-export function modelIn(dimension: 1 | 2 | 3, wave: 'full' | 'even' | 'odd' | number): ModelSpec {
-  const chosen: Wave = typeof wave === 'number' ? { kind: 'angular', number: wave } : { kind: wave };
-  return {
-    name: 'm',
-    dimension,
-    wave: chosen,
-    units: null,
-    mu: 0.5,
-    masses: null,
-    kinetic: null,
-    couplings: [],
-    interactions: [],
-    counterterms: [],
-    expectations: [],
-    cutoff: { name: 'L', value: 10, shape: { kind: 'sharp' }, declared: true, scan: null },
-    series: { order: 2, declared: true, points: [] },
-  };
-}
+export const modelIn = (dimension: 1 | 2 | 3, wave: 'full' | 'even' | 'odd' | number): ModelSpec =>
+  specOf({}, { dimension, wave, momenta: [] });
 
 export function elementOf(
   kernel: string,

@@ -96,7 +96,7 @@ function readModel(model: Model, mass: ReducedMass, file: FileView, defaults: De
   const order = declaredOrder(model, defaults);
   const open = file.open || isBroken('interaction');
   const counterterms = statementsOf(block, 'counterterm').map(statement =>
-    readCounterterm(model, statement, { interactions, open, order, mu }),
+    readCounterterm(model, statement, { interactions, open, order, mu, edge: kinematics.edge }),
   );
   const expectations = statementsOf(block, 'expect').map(statement =>
     readExpectation(model, statement, kinematics, overrides.order === null ? order : null),

@@ -18,6 +18,8 @@ export interface Vertices {
   /** The order that the model declares; null where it is not known. */
   readonly order: number | null;
   readonly mu: number;
+  /** The momentum of a sharp cutoff, Infinity for any other. */
+  readonly edge: number;
 }
 
 /** The counterterm as the core wants it, or null where it has a mistake. */
@@ -101,5 +103,7 @@ function readScale(model: Model, statement: CountertermStatement, vertices: Vert
   if (value === null) return null;
   const span = within(statement, at.span);
   if (!(value > 0)) return model.reporter.error('value', span, `The subtraction point is a positive momentum, and this is ${value}.`);
+  if (kind === 'p' && value >= vertices.edge)
+    return model.reporter.error('value', span, `This subtraction point lies beyond the sharp cutoff, ${vertices.edge}.`);
   return kind === 'kappa' && Number.isNaN(vertices.mu) ? null : value;
 }

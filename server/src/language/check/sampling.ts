@@ -19,6 +19,7 @@ const momenta = [
   [0.3127, 0.1371],
   [0.01713, 0.02917],
   [0.7193, 0.4311],
+  [0.6407, 0.00531],
 ] as const;
 
 /** V(p, k) = conj V(k, p). In dimension 1 (`signed`) momenta of both signs. */
